@@ -1,0 +1,2 @@
+//! Command line of seaplumb.
+fn main() {}
