@@ -1,3 +1,7 @@
 //! seaplumb: from the log of a dive or a CTD cast to a depth with its uncertainty.
+pub mod column;
+pub mod constants;
+pub mod gravity;
 pub mod log;
+pub mod seawater;
 pub mod warning;

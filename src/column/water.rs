@@ -1,0 +1,311 @@
+//! Water as it was observed, and the profile of specific volume that follows from it.
+
+use super::profile::{Profile, ProfileError};
+use crate::constants::{STANDARD_ABSOLUTE_SALINITY_G_KG, STANDARD_ATMOSPHERE_DBAR};
+use crate::seawater::{
+    Composition, VALID_TO_DBAR, in_situ_temperature_degc, potential_temperature_degc, practical_salinity,
+    specific_volume_m3_kg,
+};
+
+/// Nodes farther apart than this are filled in between, so that the curvature of specific volume with
+/// pressure costs less than 0.1 mm of depth.
+const WIDEST_STEP_DBAR: f64 = 25.0;
+
+/// How the salt of a [`WaterNode`] is given.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Salt {
+    /// Conductivity in mS/cm.
+    Conductivity,
+    /// Practical Salinity.
+    Practical,
+    /// Absolute Salinity in g/kg.
+    Absolute,
+}
+
+/// One level of observed water.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct WaterNode {
+    /// Sea pressure in dbar.
+    pub pressure_dbar: f64,
+    /// In-situ temperature in degC (ITS-90).
+    pub temperature_degc: f64,
+    /// Salt, in the unit of the [`Water`]'s [`Salt`].
+    pub salt: f64,
+}
+
+/// Errors to put on the observed water, all zero for none. They act before salinity is computed, so that an error of
+/// temperature reaches density by both of its ways.
+#[derive(Debug, Clone, Copy, PartialEq, Default)]
+pub struct WaterShift {
+    /// Added to every pressure, in dbar.
+    pub pressure_dbar: f64,
+    /// Added to every pressure, as a fraction of absolute pressure.
+    pub pressure_relative: f64,
+    /// Added to every temperature, in degC.
+    pub temperature_degc: f64,
+    /// Added to every conductivity in mS/cm or Practical Salinity, whichever was measured.
+    pub salt: f64,
+    /// Added to every Absolute Salinity, in g/kg.
+    pub absolute_salinity_g_kg: f64,
+    /// Relative error of specific volume, in parts per million of the equation of state down to 100 MPa.
+    pub volume_ppm: f64,
+    /// By how much larger the relative error is in water beyond 100 MPa.
+    pub volume_ratio_beyond: f64,
+    /// Added to the mean density of the unsampled water above the first level, in kg/m3.
+    pub gap_density_kg_m3: f64,
+}
+
+/// A column of observed water, levels in increasing pressure.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Water {
+    nodes: Vec<WaterNode>,
+    salt: Salt,
+    composition: Composition,
+    continued_to_dbar: f64,
+}
+
+impl Water {
+    /// Water from its levels. Below the last level it is continued to `continued_to_dbar` with the salinity and the
+    /// potential temperature of that level; above the first, with its salinity and temperature.
+    ///
+    /// # Errors
+    /// [`ProfileError`] when fewer than two levels are left or pressures do not increase.
+    pub fn new(
+        nodes: Vec<WaterNode>,
+        salt: Salt,
+        composition: Composition,
+        continued_to_dbar: f64,
+    ) -> Result<Self, ProfileError> {
+        if nodes.len() < 2 {
+            return Err(ProfileError::TooFew { found: nodes.len() });
+        }
+        if let Some(pair) = nodes.windows(2).find(|pair| pair[1].pressure_dbar <= pair[0].pressure_dbar) {
+            return Err(ProfileError::NotIncreasing {
+                before: pair[0].pressure_dbar,
+                here: pair[1].pressure_dbar,
+            });
+        }
+        Ok(Self { nodes, salt, composition, continued_to_dbar })
+    }
+
+    /// The standard ocean (35.165 04 g/kg, 0 degC) down to `to_dbar`.
+    pub fn standard_ocean(to_dbar: f64) -> Self {
+        let count = (to_dbar.max(1.0) / WIDEST_STEP_DBAR).ceil().max(1.0);
+        let level = |i: f64| WaterNode {
+            pressure_dbar: to_dbar.max(1.0) * i / count,
+            temperature_degc: 0.0,
+            salt: STANDARD_ABSOLUTE_SALINITY_G_KG,
+        };
+        Self {
+            nodes: (0..=count as usize).map(|i| level(i as f64)).collect(),
+            salt: Salt::Absolute,
+            composition: Composition::Reference,
+            continued_to_dbar: 0.0,
+        }
+    }
+
+    /// The observed levels.
+    pub fn nodes(&self) -> &[WaterNode] {
+        &self.nodes
+    }
+
+    /// How salt was measured.
+    pub fn salt(&self) -> Salt {
+        self.salt
+    }
+
+    /// Pressure in dbar to which the water is known or continued.
+    pub fn deepest_dbar(&self) -> f64 {
+        self.nodes[self.nodes.len() - 1].pressure_dbar.max(self.continued_to_dbar)
+    }
+
+    /// Every `every`-th level, with the first and the last.
+    #[must_use]
+    pub fn thinned(&self, every: usize) -> Self {
+        let last = self.nodes.len() - 1;
+        let every = every.clamp(1, last);
+        let nodes = (0..last).step_by(every).chain([last]).map(|i| self.nodes[i]).collect();
+        Self { nodes, ..self.clone() }
+    }
+
+    /// Absolute Salinity in g/kg of a level, with the errors of `shift`.
+    fn absolute_salinity_g_kg(&self, node: &WaterNode, shift: &WaterShift) -> f64 {
+        let salt = match self.salt {
+            Salt::Absolute => node.salt,
+            Salt::Practical => self.composition.absolute_salinity_g_kg(node.salt + shift.salt),
+            Salt::Conductivity => self.composition.absolute_salinity_g_kg(practical_salinity(
+                node.salt + shift.salt,
+                node.temperature_degc + shift.temperature_degc,
+                shift.pressure(node.pressure_dbar),
+            )),
+        };
+        salt + shift.absolute_salinity_g_kg
+    }
+
+    /// Specific volume against sea pressure from the surface at `surface_dbar` down, with the errors of
+    /// `shift`.
+    ///
+    /// # Errors
+    /// [`ProfileError`] when a level is not that of water (see [`Profile::new`]).
+    pub fn profile(&self, surface_dbar: f64, shift: &WaterShift) -> Result<Profile, ProfileError> {
+        let mut builder = Builder::new(shift, self.nodes.len() + 2);
+        let first = &self.nodes[0];
+        let first_dbar = shift.pressure(first.pressure_dbar);
+        let mut above = Level {
+            pressure_dbar: first_dbar,
+            salinity_g_kg: self.absolute_salinity_g_kg(first, shift),
+            temperature_degc: first.temperature_degc + shift.temperature_degc,
+        };
+        if surface_dbar < first_dbar {
+            builder.fill_from_surface(surface_dbar, &above);
+        }
+        builder.push(&above);
+        for node in &self.nodes[1..] {
+            let here = Level {
+                pressure_dbar: shift.pressure(node.pressure_dbar),
+                salinity_g_kg: self.absolute_salinity_g_kg(node, shift),
+                temperature_degc: node.temperature_degc + shift.temperature_degc,
+            };
+            builder.bridge(&above, &here);
+            builder.push(&here);
+            above = here;
+        }
+        builder.continue_adiabatically(&above, shift.pressure(self.continued_to_dbar));
+        Profile::new(builder.pressure_dbar, builder.specific_volume_m3_kg)
+    }
+}
+
+impl WaterShift {
+    /// A sea pressure in dbar with the errors of this shift.
+    pub fn pressure(&self, pressure_dbar: f64) -> f64 {
+        pressure_dbar
+            + self.pressure_dbar
+            + self.pressure_relative * (pressure_dbar + STANDARD_ATMOSPHERE_DBAR)
+    }
+}
+
+struct Level {
+    pressure_dbar: f64,
+    salinity_g_kg: f64,
+    temperature_degc: f64,
+}
+
+/// Collects the nodes of a profile from the levels of a column.
+struct Builder<'a> {
+    shift: &'a WaterShift,
+    pressure_dbar: Vec<f64>,
+    specific_volume_m3_kg: Vec<f64>,
+}
+
+impl<'a> Builder<'a> {
+    fn new(shift: &'a WaterShift, capacity: usize) -> Self {
+        Self {
+            shift,
+            pressure_dbar: Vec::with_capacity(capacity),
+            specific_volume_m3_kg: Vec::with_capacity(capacity),
+        }
+    }
+
+    fn push(&mut self, level: &Level) {
+        let ratio = if level.pressure_dbar > VALID_TO_DBAR { self.shift.volume_ratio_beyond } else { 1.0 };
+        let error = 1.0 + self.shift.volume_ppm * 1e-6 * ratio;
+        let v = specific_volume_m3_kg(level.salinity_g_kg, level.temperature_degc, level.pressure_dbar);
+        self.pressure_dbar.push(level.pressure_dbar);
+        self.specific_volume_m3_kg.push(v * error);
+    }
+
+    /// The unsampled water above the first level, as salty and as warm as that level.
+    fn fill_from_surface(&mut self, surface_dbar: f64, first: &Level) {
+        self.push(&Level { pressure_dbar: surface_dbar, ..*first });
+        // Specific volume runs linearly down to the first level, which is known: twice the error at the
+        // top is the error of the mean.
+        let v = &mut self.specific_volume_m3_kg[0];
+        *v -= 2.0 * self.shift.gap_density_kg_m3 * *v * *v;
+    }
+
+    /// Salinity and temperature linear between two levels that stand far apart.
+    fn bridge(&mut self, above: &Level, below: &Level) {
+        let pieces = ((below.pressure_dbar - above.pressure_dbar) / WIDEST_STEP_DBAR - 1e-9).ceil();
+        for piece in 1..pieces as usize {
+            let share = piece as f64 / pieces;
+            let between = |a: f64, b: f64| a + (b - a) * share;
+            self.push(&Level {
+                pressure_dbar: between(above.pressure_dbar, below.pressure_dbar),
+                salinity_g_kg: between(above.salinity_g_kg, below.salinity_g_kg),
+                temperature_degc: between(above.temperature_degc, below.temperature_degc),
+            });
+        }
+    }
+
+    /// Water below the last level: its salinity, its entropy.
+    fn continue_adiabatically(&mut self, last: &Level, to_dbar: f64) {
+        let gap = to_dbar - last.pressure_dbar;
+        if gap <= 0.0 {
+            return;
+        }
+        let theta = potential_temperature_degc(last.salinity_g_kg, last.temperature_degc, last.pressure_dbar);
+        let pieces = (gap / WIDEST_STEP_DBAR).ceil();
+        for piece in 1..=pieces as usize {
+            let pressure_dbar = last.pressure_dbar + gap * piece as f64 / pieces;
+            let temperature_degc = in_situ_temperature_degc(last.salinity_g_kg, theta, pressure_dbar);
+            self.push(&Level { pressure_dbar, salinity_g_kg: last.salinity_g_kg, temperature_degc });
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn two_levels() -> Water {
+        let nodes = vec![
+            WaterNode { pressure_dbar: 4.0, temperature_degc: 20.0, salt: 35.0 },
+            WaterNode { pressure_dbar: 104.0, temperature_degc: 10.0, salt: 34.0 },
+        ];
+        Water::new(nodes, Salt::Practical, Composition::Reference, 300.0).unwrap()
+    }
+
+    #[test]
+    fn reaches_from_the_surface_to_the_end_without_wide_steps() {
+        let profile = two_levels().profile(-0.1, &WaterShift::default()).unwrap();
+        let p = profile.pressure_dbar();
+        assert_eq!((p[0], p[p.len() - 1]), (-0.1, 300.0));
+        assert!(p.windows(2).all(|w| w[1] - w[0] <= WIDEST_STEP_DBAR + 1e-9));
+    }
+
+    #[test]
+    fn the_gap_above_holds_the_water_of_the_first_level() {
+        let profile = two_levels().profile(0.0, &WaterShift::default()).unwrap();
+        let salinity = Composition::Reference.absolute_salinity_g_kg(35.0);
+        assert_eq!(profile.specific_volume_m3_kg()[0], specific_volume_m3_kg(salinity, 20.0, 0.0));
+    }
+
+    #[test]
+    fn an_error_of_the_gap_shifts_its_mean_density() {
+        let plain = two_levels().profile(0.0, &WaterShift::default()).unwrap();
+        let shift = WaterShift { gap_density_kg_m3: 0.5, ..WaterShift::default() };
+        let shifted = two_levels().profile(0.0, &shift).unwrap();
+        let mean = |p: &Profile| 0.5 * (p.at(0.0).recip() + p.at(4.0).recip());
+        assert!((mean(&shifted) - mean(&plain) - 0.5).abs() < 1e-3);
+    }
+
+    #[test]
+    fn the_continuation_has_no_stratification() {
+        // Potential density of the continued water is that of the last level.
+        let water = two_levels();
+        let profile = water.profile(0.0, &WaterShift::default()).unwrap();
+        let salinity = Composition::Reference.absolute_salinity_g_kg(34.0);
+        let theta = potential_temperature_degc(salinity, 10.0, 104.0);
+        let t = in_situ_temperature_degc(salinity, theta, 300.0);
+        assert_eq!(profile.at(300.0), specific_volume_m3_kg(salinity, t, 300.0));
+    }
+
+    #[test]
+    fn thinning_keeps_both_ends() {
+        let water = Water::standard_ocean(11_000.0);
+        let thin = water.thinned(7);
+        assert_eq!(thin.nodes()[0], water.nodes()[0]);
+        assert_eq!(thin.nodes().last(), water.nodes().last());
+        assert!(thin.nodes().len() < water.nodes().len() / 6);
+    }
+}
