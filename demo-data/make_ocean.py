@@ -20,6 +20,7 @@ GRID_STEP_DBAR = 0.25
 
 INTERNAL_WAVE_BOTTOM_DBAR = 800.0
 INTERNAL_WAVE_AMPLITUDE_DBAR = 4.0
+MIXED_LAYER_DBAR, MIXING_DBAR = 45.0, 10.0
 
 
 def trench_water(p, wave):
@@ -32,17 +33,18 @@ def trench_water(p, wave):
     inside = p < INTERNAL_WAVE_BOTTOM_DBAR
     lift = np.sin(np.pi * p / INTERNAL_WAVE_BOTTOM_DBAR) ** 2
     q = p - wave * INTERNAL_WAVE_AMPLITUDE_DBAR * np.where(inside, lift, 0.0)
+    q = MIXING_DBAR * np.logaddexp(0.0, (q - MIXED_LAYER_DBAR) / MIXING_DBAR)  # flat on top
     salinity = (
         34.69
-        + 1.32 / (1.0 + np.exp((q - 235.0) / 70.0))
-        + 0.20 * np.exp(-(((q - 150.0) / 75.0) ** 2))
-        - 0.31 * np.exp(-(((q - 740.0) / 350.0) ** 2))
+        + 1.32 / (1.0 + np.exp((q - 200.0) / 70.0))
+        + 0.20 * np.exp(-(((q - 110.0) / 75.0) ** 2))
+        - 0.31 * np.exp(-(((q - 695.0) / 350.0) ** 2))
     )
     potential = (
         0.96
         + 1.1 * np.exp(-q / 1500.0)
         + 9.4 * np.exp(-q / 520.0)
-        + 16.0 / (1.0 + np.exp((q - 215.0) / 75.0))
+        + 16.5 / (1.0 + np.exp((q - 175.0) / 75.0))
     )
     return salinity, potential
 
