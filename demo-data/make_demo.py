@@ -11,7 +11,8 @@ other versions of numpy make the same files; a mathematical library that rounds 
 move a last printed digit, which --check tells from a real difference.
 
 The parts: make_ocean.py (water, gravity, true depth), make_dive.py (the lander dive),
-make_casts.py (the other logs), make_tables.py (printing).
+make_casts.py (the other logs), make_tables.py (printing); make_second_route.py reduces the printed
+logs by a route of its own.
 """
 
 import argparse

@@ -60,7 +60,7 @@ def normal_gravity(latitude, depth_m):
     """Normal gravity in m/s2 at a depth, geoid height 0, without the attraction of the water.
 
     The closed formula holds on and above the ellipsoid only; below it, the second-order
-    expansion in height (NIMA TR8350.2, 2000, equation 4-3) continues the value on the ellipsoid.
+    expansion in height (NIMA TR8350.2, 2000) continues the value on the ellipsoid.
     """
     e = boule.WGS84
     a, f = e.semimajor_axis, e.flattening
