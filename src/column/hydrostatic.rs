@@ -24,8 +24,8 @@ impl Column {
     /// Integrates `profile` from the sea surface, which is at the sea pressure `surface_dbar`
     /// (air pressure less the standard atmosphere), under `gravity`.
     pub fn integrate(profile: &Profile, surface_dbar: f64, gravity: &dyn Gravity) -> Self {
-        let Profile { pressure_dbar, specific_volume_m3_kg } = &profile.starting_at(surface_dbar);
-        let (p, v) = (pressure_dbar, specific_volume_m3_kg);
+        let (pressure_dbar, specific_volume_m3_kg) = profile.starting_at(surface_dbar).into_parts();
+        let (p, v) = (&pressure_dbar, &specific_volume_m3_kg);
         let pull = if gravity.water_pulls() { 4.0 * PI * GRAVITATION_M3_KG_S2 } else { 0.0 };
         let (mut z, mut g, mut mass) = (0.0, gravity.before_water_m_s2(0.0), 0.0);
         let mut depth_m = Vec::with_capacity(p.len());
@@ -47,12 +47,7 @@ impl Column {
             depth_m.push(z);
             gravity_m_s2.push(g);
         }
-        Self {
-            pressure_dbar: pressure_dbar.clone(),
-            specific_volume_m3_kg: specific_volume_m3_kg.clone(),
-            depth_m,
-            gravity_m_s2,
-        }
+        Self { pressure_dbar, specific_volume_m3_kg, depth_m, gravity_m_s2 }
     }
 
     /// Sea pressures of the nodes in dbar, the first at the surface.

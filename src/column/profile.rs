@@ -82,6 +82,11 @@ impl Profile {
         &self.specific_volume_m3_kg
     }
 
+    /// Pressures in dbar and specific volumes in m3/kg of the nodes.
+    pub fn into_parts(self) -> (Vec<f64>, Vec<f64>) {
+        (self.pressure_dbar, self.specific_volume_m3_kg)
+    }
+
     /// Specific volume in m3/kg at `pressure_dbar`.
     pub fn at(&self, pressure_dbar: f64) -> f64 {
         let i = interval(&self.pressure_dbar, pressure_dbar);
