@@ -1,4 +1,5 @@
 //! seaplumb: from the log of a dive or a CTD cast to a depth with its uncertainty.
+pub mod cast;
 pub mod column;
 pub mod constants;
 pub mod gravity;

@@ -155,8 +155,11 @@ mod tests {
         let fine = Profile::new(p, v).unwrap();
         let g = LocalGravity::normal(-23.2);
         let (a, b) = (Column::integrate(&coarse, 0.0, &g), Column::integrate(&fine, 0.0, &g));
+        // Gravity curves by 6 gamma / a2 = 1.4e-12 and, water growing denser downward by 4.5 g/m4, by
+        // 4 pi G x 4.5e-3 = 3.8e-12 m-1 s-2. Taking it for straight over 110 steps of 100 m costs
+        // 110 x 100^3 x 5.2e-12 / 12 / 9.8 = 5e-6 m.
         for p in [10.0, 150.0, 5_000.0, 11_000.0] {
-            assert!((a.depth_m(p) - b.depth_m(p)).abs() < 1e-6, "{p}: {}", a.depth_m(p) - b.depth_m(p));
+            assert!((a.depth_m(p) - b.depth_m(p)).abs() < 5e-6, "{p}: {}", a.depth_m(p) - b.depth_m(p));
         }
     }
 

@@ -1,0 +1,169 @@
+//! The zero of the pressure sensor, from the time on deck.
+
+use super::blocks::{median, robust_deviation};
+use super::{CastSettings, Deck};
+use crate::constants::{HPA_PER_DBAR, STANDARD_ATMOSPHERE_DBAR};
+use crate::log::{Log, LogError, PressureKind};
+
+/// Standard uncertainty in dbar of a zero that nothing on deck confirms.
+pub const ASSUMED_U_DBAR: f64 = 0.1;
+
+/// A zero offset larger than this is not believed without the user's word.
+const LARGEST_DBAR: f64 = 3.0;
+
+/// What to do about the zero offset.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub enum TareChoice {
+    /// Take it from the samples on deck, when there are any.
+    Auto,
+    /// Leave the readings as they are.
+    None,
+    /// Subtract this many dbar from each reading.
+    Fixed(f64),
+}
+
+/// Where a zero offset comes from.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum TareBasis {
+    /// Samples on deck.
+    Deck,
+    /// The user gave it.
+    Given,
+    /// Nothing tells: zero is assumed.
+    Assumed,
+}
+
+/// The zero offset that is subtracted from each reading.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Tare {
+    /// Offset in dbar: what the sensor reads too much.
+    pub value_dbar: f64,
+    /// Its standard uncertainty in dbar.
+    pub standard_uncertainty_dbar: f64,
+    /// Where it comes from.
+    pub basis: TareBasis,
+    /// Offset before the cast in dbar.
+    pub before_dbar: Option<f64>,
+    /// Offset after the cast in dbar.
+    pub after_dbar: Option<f64>,
+}
+
+impl Tare {
+    /// Whether an error of the air pressure moves the zero with it: the deck is set to the air's pressure.
+    pub fn follows_air(&self) -> bool {
+        self.basis == TareBasis::Deck
+    }
+}
+
+/// What a sensor without offset reads in air, in dbar.
+pub(super) fn expected_on_deck_dbar(kind: PressureKind, air_pressure_hpa: f64) -> f64 {
+    match kind {
+        PressureKind::Absolute => air_pressure_hpa / HPA_PER_DBAR,
+        PressureKind::Sea => air_pressure_hpa / HPA_PER_DBAR - STANDARD_ATMOSPHERE_DBAR,
+        PressureKind::Gauge => 0.0,
+    }
+}
+
+/// The zero offset by the user's choice and the samples on deck.
+pub(super) fn settle(
+    log: &Log,
+    settings: &CastSettings,
+    kind: PressureKind,
+    kind_known: bool,
+    deck: Option<&Deck>,
+) -> Result<Tare, LogError> {
+    let expected = expected_on_deck_dbar(kind, settings.air_pressure_hpa);
+    let readings = deck.map(|deck| Readings::new(&log.pressure.values, deck));
+    let before_dbar = readings.as_ref().and_then(|r| r.before).map(|p| p - expected);
+    let after_dbar = readings.as_ref().and_then(|r| r.after).map(|p| p - expected);
+    let plain = |value_dbar, basis| Tare {
+        value_dbar,
+        standard_uncertainty_dbar: ASSUMED_U_DBAR,
+        basis,
+        before_dbar,
+        after_dbar,
+    };
+    if let TareChoice::Fixed(value_dbar) = settings.tare {
+        return Ok(plain(value_dbar, TareBasis::Given));
+    }
+    let offset = match (before_dbar, after_dbar) {
+        (Some(a), Some(b)) => 0.5 * (a + b),
+        (Some(a), None) | (None, Some(a)) => a,
+        (None, None) => return Ok(plain(0.0, TareBasis::Assumed)),
+    };
+    if offset.abs() > LARGEST_DBAR {
+        return Err(unbelievable(log, offset + expected, kind, kind_known));
+    }
+    if settings.tare == TareChoice::None {
+        return Ok(plain(0.0, TareBasis::Assumed));
+    }
+    // The zero wanders between the two ends of the cast: anywhere between them at the deepest, a rectangular
+    // distribution of half width half their difference (JCGM 100:2008, 4.3.7).
+    let wander = match (before_dbar, after_dbar) {
+        (Some(a), Some(b)) => 0.5 * (a - b).abs() / 3f64.sqrt(),
+        _ => 0.0,
+    };
+    let scatter = readings.map_or(0.0, |r| r.u_of_median);
+    Ok(Tare {
+        value_dbar: offset,
+        standard_uncertainty_dbar: wander.hypot(scatter),
+        basis: TareBasis::Deck,
+        before_dbar,
+        after_dbar,
+    })
+}
+
+/// Medians of the readings on deck.
+struct Readings {
+    before: Option<f64>,
+    after: Option<f64>,
+    /// Standard uncertainty of their mean in dbar, from scatter and resolution.
+    u_of_median: f64,
+}
+
+impl Readings {
+    fn new(pressure: &[f64], deck: &Deck) -> Self {
+        // The tenth of the time next to the water may hold the splash.
+        let before = deck.before.start..deck.before.end - deck.before.len() / 10;
+        let after = deck.after.start + deck.after.len() / 10..deck.after.end;
+        let collect =
+            |range| pressure[range].iter().copied().filter(|p: &f64| p.is_finite()).collect::<Vec<_>>();
+        let (mut a, mut b) = (collect(before), collect(after));
+        let (before, after) = (median(&mut a), median(&mut b));
+        let residuals: Vec<f64> = a
+            .iter()
+            .map(|p| p - before.unwrap_or(0.0))
+            .chain(b.iter().map(|p| p - after.unwrap_or(0.0)))
+            .collect();
+        let count = residuals.len().max(1) as f64;
+        let deviation = robust_deviation(residuals).unwrap_or(0.0);
+        let mut steps: Vec<f64> =
+            a.windows(2).chain(b.windows(2)).map(|w| (w[1] - w[0]).abs()).filter(|d| *d > 1e-9).collect();
+        steps.sort_by(f64::total_cmp);
+        let resolution = steps.first().copied().unwrap_or(0.0);
+        // Standard error of a median of normal noise: sqrt(pi/2) times that of the mean.
+        let scatter = deviation * (std::f64::consts::FRAC_PI_2 / count).sqrt();
+        Self { before, after, u_of_median: scatter.hypot(resolution / 12f64.sqrt()) }
+    }
+}
+
+fn unbelievable(log: &Log, reading: f64, kind: PressureKind, kind_known: bool) -> LogError {
+    let said = match (kind, kind_known) {
+        (PressureKind::Absolute, _) => "for an absolute sensor",
+        (PressureKind::Gauge, _) => "for a gauge sensor",
+        (PressureKind::Sea, true) => "for sea pressure",
+        (PressureKind::Sea, false) => "for sea pressure, which is assumed when nothing is said",
+    };
+    let error = LogError::new(
+        &log.source,
+        format!("on deck the pressure reads {reading:.2} dbar, too far from zero {said}"),
+    );
+    if (8.0..11.5).contains(&reading) && kind != PressureKind::Absolute {
+        error.remedy("that is the pressure of the air: --pressure absolute")
+    } else {
+        error.remedy(format!(
+            "check the unit (--column pressure={}:UNIT) and the kind (--pressure absolute, sea or gauge), or give the offset: --tare DBAR",
+            log.pressure.name
+        ))
+    }
+}
