@@ -1,4 +1,4 @@
-"""What the table makers share: writing a table, and the hydrostatic balance."""
+"""What the table makers share: versions, numbers as text, writing a table."""
 
 import json
 from importlib.metadata import version
