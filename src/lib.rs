@@ -2,7 +2,9 @@
 pub mod cast;
 pub mod column;
 pub mod constants;
+pub mod depth;
 pub mod gravity;
 pub mod log;
 pub mod seawater;
+pub mod statistics;
 pub mod warning;

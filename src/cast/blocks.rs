@@ -45,9 +45,9 @@ pub(crate) fn median(values: &mut [f64]) -> Option<f64> {
     if values.is_empty() {
         return None;
     }
-    let middle = values.len() / 2;
+    let (middle, odd) = (values.len() / 2, values.len() % 2 == 1);
     let (below, &mut upper, _) = values.select_nth_unstable_by(middle, f64::total_cmp);
-    if values.len() % 2 == 1 {
+    if odd {
         return Some(upper);
     }
     let lower = below.iter().copied().fold(f64::NEG_INFINITY, f64::max);
@@ -62,6 +62,17 @@ pub(super) fn robust_deviation(mut distances: Vec<f64>) -> Option<f64> {
     median(&mut distances).map(|m| 1.4826 * m)
 }
 
+/// The decimal place to which values were rounded, as a step in their unit; 0 when none of the first eight fits them all
+/// (converted units, full precision).
+pub(super) fn resolution(values: &[f64]) -> f64 {
+    let sample: Vec<f64> = values.iter().copied().filter(|v| v.is_finite()).take(2_000).collect();
+    (0..8)
+        .map(|places| 10f64.powi(places))
+        .find(|scale| sample.iter().all(|v| (v * scale - (v * scale).round()).abs() < 1e-3))
+        .filter(|_| !sample.is_empty())
+        .map_or(0.0, f64::recip)
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -71,6 +82,14 @@ mod tests {
         assert_eq!(median(&mut [3.0, 1.0, 2.0]), Some(2.0));
         assert_eq!(median(&mut [4.0, 1.0, 2.0, 3.0]), Some(2.5));
         assert_eq!(median(&mut []), None);
+    }
+
+    #[test]
+    fn resolution_is_the_last_decimal() {
+        assert_eq!(resolution(&[1.25, 3.5, 7.0, f64::NAN]), 0.01);
+        assert_eq!(resolution(&[4.0, 5.0, 6.0]), 1.0);
+        assert_eq!(resolution(&[std::f64::consts::PI, 1.0 / 3.0]), 0.0);
+        assert_eq!(resolution(&[]), 0.0);
     }
 
     #[test]

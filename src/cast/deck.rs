@@ -1,6 +1,6 @@
 //! The time on deck, before launch and after recovery.
 
-use super::blocks::Blocks;
+use super::blocks::{Blocks, median};
 use std::ops::Range;
 
 /// Samples in air.
@@ -50,7 +50,7 @@ pub(super) fn find(blocks: &Blocks, pressure: &[f64], expected_dbar: f64) -> Opt
         let order: Vec<usize> = order.collect();
         let mut first: Vec<f64> =
             order.iter().map(|&b| blocks.pressure[b]).filter(|p| p.is_finite()).take(5).collect();
-        let Some(start_dbar) = super::blocks::median(&mut first) else { return 0 };
+        let Some(start_dbar) = median(&mut first) else { return 0 };
         if start_dbar > low + WANDER_WITH_SALT_DBAR {
             return 0;
         }
@@ -83,7 +83,7 @@ fn water_salt(blocks: &Blocks, low: f64, high: f64) -> Option<f64> {
         .filter(|(s, p)| s.is_finite() && **p > below)
         .map(|(s, _)| *s)
         .collect();
-    super::blocks::median(&mut deep).filter(|&s| s > TELLING_SALT)
+    median(&mut deep).filter(|&s| s > TELLING_SALT)
 }
 
 #[cfg(test)]

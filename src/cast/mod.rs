@@ -3,12 +3,14 @@
 //! Nothing is dropped. A sample that is suspect keeps its place and gets a flag; later stages pass it over.
 
 mod blocks;
+
 mod deck;
 mod legs;
 mod noise;
 mod suspect;
 mod tare;
 
+pub(crate) use blocks::median;
 pub use deck::Deck;
 pub use legs::{Leg, Legs};
 pub use noise::Noise;

@@ -1,6 +1,6 @@
 //! Noise of the pressure, from the pressure itself.
 
-use super::blocks::robust_deviation;
+use super::blocks::{median, resolution, robust_deviation};
 use super::legs::{Leg, Legs};
 
 /// What the log tells of the noise of its pressure.
@@ -45,19 +45,9 @@ fn equal_step(pressure: &[f64]) -> Option<f64> {
         return None;
     }
     let mut sorted = steps.clone();
-    let usual = super::blocks::median(&mut sorted)?;
+    let usual = median(&mut sorted)?;
     let equal = steps.iter().filter(|d| (**d - usual).abs() < 1e-6 * usual + 1e-9).count();
     (usual >= 0.1 && equal * 10 >= steps.len() * 9).then_some(usual)
-}
-
-/// The smallest step between neighbouring readings that differ.
-fn resolution(pressure: &[f64]) -> f64 {
-    pressure
-        .windows(2)
-        .map(|w| (w[1] - w[0]).abs())
-        .filter(|d| *d > 1e-9)
-        .fold(f64::INFINITY, f64::min)
-        .min(1.0)
 }
 
 #[cfg(test)]

@@ -198,18 +198,17 @@ impl<'a> Judge<'a> {
     }
 
     fn spikes(&mut self) {
-        let log = self.log;
-        let mut search = |quantity, values: &[f64], least| {
-            for i in spike::find(values, self.legs.water(), least) {
+        let temperature = self.log.temperature.as_ref().map(|t| t.values.as_slice());
+        let salt = self.salt().map(|c| c.values.as_slice());
+        let searches = [
+            (Quantity::Pressure, Some(self.pressure), spike::LEAST_PRESSURE_DBAR),
+            (Quantity::Temperature, temperature, spike::LEAST_TEMPERATURE_DEGC),
+            (Quantity::Salt, salt, spike::LEAST_SALT),
+        ];
+        for (quantity, values, least) in searches {
+            for i in spike::find(values.unwrap_or(&[]), self.legs.water(), least) {
                 self.accuse(i, quantity, Reason::Spike, Reason::Spike.flag());
             }
-        };
-        search(Quantity::Pressure, self.pressure, spike::LEAST_PRESSURE_DBAR);
-        if let Some(t) = &log.temperature {
-            search(Quantity::Temperature, &t.values, spike::LEAST_TEMPERATURE_DEGC);
-        }
-        if let Some(c) = log.conductivity.as_ref().or(log.salinity.as_ref()) {
-            search(Quantity::Salt, &c.values, spike::LEAST_SALT);
         }
     }
 

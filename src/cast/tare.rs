@@ -1,6 +1,6 @@
 //! The zero of the pressure sensor, from the time on deck.
 
-use super::blocks::{median, robust_deviation};
+use super::blocks::{median, resolution, robust_deviation};
 use super::{CastSettings, Deck};
 use crate::constants::{HPA_PER_DBAR, STANDARD_ATMOSPHERE_DBAR};
 use crate::log::{Log, LogError, PressureKind};
@@ -40,6 +40,8 @@ pub struct Tare {
     pub value_dbar: f64,
     /// Its standard uncertainty in dbar.
     pub standard_uncertainty_dbar: f64,
+    /// Degrees of freedom of that uncertainty; `None` for infinite.
+    pub degrees_of_freedom: Option<f64>,
     /// Where it comes from.
     pub basis: TareBasis,
     /// Offset before the cast in dbar.
@@ -79,6 +81,7 @@ pub(super) fn settle(
     let plain = |value_dbar, basis| Tare {
         value_dbar,
         standard_uncertainty_dbar: ASSUMED_U_DBAR,
+        degrees_of_freedom: None,
         basis,
         before_dbar,
         after_dbar,
@@ -103,10 +106,13 @@ pub(super) fn settle(
         (Some(a), Some(b)) => 0.5 * (a - b).abs() / 3f64.sqrt(),
         _ => 0.0,
     };
-    let scatter = readings.map_or(0.0, |r| r.u_of_median);
+    let (scatter, rounding, count) = readings.map_or((0.0, 0.0, 1.0), |r| (r.scatter, r.rounding, r.count));
+    let u = wander.hypot(scatter).hypot(rounding);
     Ok(Tare {
         value_dbar: offset,
-        standard_uncertainty_dbar: wander.hypot(scatter),
+        standard_uncertainty_dbar: u,
+        // Welch-Satterthwaite (JCGM 100:2008, G.2b): only the scatter has a finite number.
+        degrees_of_freedom: (scatter > 0.0 && count > 1.0).then(|| (u / scatter).powi(4) * (count - 1.0)),
         basis: TareBasis::Deck,
         before_dbar,
         after_dbar,
@@ -117,8 +123,12 @@ pub(super) fn settle(
 struct Readings {
     before: Option<f64>,
     after: Option<f64>,
-    /// Standard uncertainty of their mean in dbar, from scatter and resolution.
-    u_of_median: f64,
+    /// Standard uncertainty of the medians in dbar, from the scatter of the readings.
+    scatter: f64,
+    /// The same from their last decimal.
+    rounding: f64,
+    /// Number of readings.
+    count: f64,
 }
 
 impl Readings {
@@ -126,8 +136,9 @@ impl Readings {
         // The tenth of the time next to the water may hold the splash.
         let before = deck.before.start..deck.before.end - deck.before.len() / 10;
         let after = deck.after.start + deck.after.len() / 10..deck.after.end;
-        let collect =
-            |range| pressure[range].iter().copied().filter(|p: &f64| p.is_finite()).collect::<Vec<_>>();
+        let collect = |range: std::ops::Range<usize>| -> Vec<f64> {
+            pressure[range].iter().copied().filter(|p| p.is_finite()).collect()
+        };
         let (mut a, mut b) = (collect(before), collect(after));
         let (before, after) = (median(&mut a), median(&mut b));
         let residuals: Vec<f64> = a
@@ -137,13 +148,15 @@ impl Readings {
             .collect();
         let count = residuals.len().max(1) as f64;
         let deviation = robust_deviation(residuals).unwrap_or(0.0);
-        let mut steps: Vec<f64> =
-            a.windows(2).chain(b.windows(2)).map(|w| (w[1] - w[0]).abs()).filter(|d| *d > 1e-9).collect();
-        steps.sort_by(f64::total_cmp);
-        let resolution = steps.first().copied().unwrap_or(0.0);
-        // Standard error of a median of normal noise: sqrt(pi/2) times that of the mean.
-        let scatter = deviation * (std::f64::consts::FRAC_PI_2 / count).sqrt();
-        Self { before, after, u_of_median: scatter.hypot(resolution / 12f64.sqrt()) }
+        let resolution = resolution(if a.is_empty() { &b } else { &a });
+        Self {
+            before,
+            after,
+            // Standard error of a median of normal noise: sqrt(pi/2) times that of the mean.
+            scatter: deviation * (std::f64::consts::FRAC_PI_2 / count).sqrt(),
+            rounding: resolution / 12f64.sqrt(),
+            count,
+        }
     }
 }
 

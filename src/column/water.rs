@@ -1,7 +1,7 @@
 //! Water as it was observed, and the profile of specific volume that follows from it.
 
 use super::profile::{Profile, ProfileError};
-use crate::constants::{STANDARD_ABSOLUTE_SALINITY_G_KG, STANDARD_ATMOSPHERE_DBAR};
+use crate::constants::STANDARD_ABSOLUTE_SALINITY_G_KG;
 use crate::seawater::{
     Composition, VALID_TO_DBAR, in_situ_temperature_degc, potential_temperature_degc, practical_salinity,
     specific_volume_m3_kg,
@@ -39,7 +39,7 @@ pub struct WaterNode {
 pub struct WaterShift {
     /// Added to every pressure, in dbar.
     pub pressure_dbar: f64,
-    /// Added to every pressure, as a fraction of absolute pressure.
+    /// Added to every pressure, as a fraction of it.
     pub pressure_relative: f64,
     /// Added to every temperature, in degC.
     pub temperature_degc: f64,
@@ -47,10 +47,10 @@ pub struct WaterShift {
     pub salt: f64,
     /// Added to every Absolute Salinity, in g/kg.
     pub absolute_salinity_g_kg: f64,
-    /// Relative error of specific volume, in parts per million of the equation of state down to 100 MPa.
+    /// Relative error of specific volume in parts per million, down to 100 MPa.
     pub volume_ppm: f64,
-    /// By how much larger the relative error is in water beyond 100 MPa.
-    pub volume_ratio_beyond: f64,
+    /// The same beyond 100 MPa, where the equation of state is extrapolated.
+    pub volume_ppm_beyond: f64,
     /// Added to the mean density of the unsampled water above the first level, in kg/m3.
     pub gap_density_kg_m3: f64,
 }
@@ -88,13 +88,19 @@ impl Water {
         Ok(Self { nodes, salt, composition, continued_to_dbar })
     }
 
-    /// The standard ocean (35.165 04 g/kg, 0 degC) down to `to_dbar`.
+    /// The standard ocean down to `to_dbar`: 35.165 04 g/kg and a Conservative Temperature, here the same as the
+    /// potential temperature, of 0 degC (TEOS-10 manual, section 3.32: the reference of dynamic height).
     pub fn standard_ocean(to_dbar: f64) -> Self {
-        let count = (to_dbar.max(1.0) / WIDEST_STEP_DBAR).ceil().max(1.0);
-        let level = |i: f64| WaterNode {
-            pressure_dbar: to_dbar.max(1.0) * i / count,
-            temperature_degc: 0.0,
-            salt: STANDARD_ABSOLUTE_SALINITY_G_KG,
+        let to_dbar = to_dbar.max(1.0);
+        let count = (to_dbar / WIDEST_STEP_DBAR).ceil();
+        let level = |i: f64| {
+            let pressure_dbar = to_dbar * i / count;
+            let salt = STANDARD_ABSOLUTE_SALINITY_G_KG;
+            WaterNode {
+                pressure_dbar,
+                temperature_degc: in_situ_temperature_degc(salt, 0.0, pressure_dbar),
+                salt,
+            }
         };
         Self {
             nodes: (0..=count as usize).map(|i| level(i as f64)).collect(),
@@ -178,9 +184,7 @@ impl Water {
 impl WaterShift {
     /// A sea pressure in dbar with the errors of this shift.
     pub fn pressure(&self, pressure_dbar: f64) -> f64 {
-        pressure_dbar
-            + self.pressure_dbar
-            + self.pressure_relative * (pressure_dbar + STANDARD_ATMOSPHERE_DBAR)
+        pressure_dbar * (1.0 + self.pressure_relative) + self.pressure_dbar
     }
 }
 
@@ -207,8 +211,9 @@ impl<'a> Builder<'a> {
     }
 
     fn push(&mut self, level: &Level) {
-        let ratio = if level.pressure_dbar > VALID_TO_DBAR { self.shift.volume_ratio_beyond } else { 1.0 };
-        let error = 1.0 + self.shift.volume_ppm * 1e-6 * ratio;
+        let beyond = level.pressure_dbar > VALID_TO_DBAR;
+        let ppm = if beyond { self.shift.volume_ppm_beyond } else { self.shift.volume_ppm };
+        let error = 1.0 + ppm * 1e-6;
         let v = specific_volume_m3_kg(level.salinity_g_kg, level.temperature_degc, level.pressure_dbar);
         self.pressure_dbar.push(level.pressure_dbar);
         self.specific_volume_m3_kg.push(v * error);

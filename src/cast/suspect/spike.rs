@@ -21,7 +21,7 @@ const AROUND: usize = 15;
 /// A median of five leaves every rise, fall and step as it is, so that a sharp thermocline is no spike; one or two wild values
 /// in a row are.
 pub(super) fn find(values: &[f64], range: Range<usize>, least: f64) -> Vec<usize> {
-    let v = &values[range.clone()];
+    let v = values.get(range.clone()).unwrap_or(&[]);
     if v.len() < 5 {
         return Vec::new();
     }

@@ -1,5 +1,6 @@
 //! Values that repeat while the instrument moves.
 
+use crate::cast::blocks::{median, resolution};
 use std::ops::Range;
 
 /// When a repeated value is stuck and not merely rounded.
@@ -42,7 +43,7 @@ pub(super) fn find_pressure(pressure: &[f64], range: Range<usize>) -> Vec<usize>
         .map(|w| (w[1] - w[0]).abs())
         .filter(|d| d.is_finite() && *d > 0.0)
         .collect();
-    let Some(usual) = crate::cast::blocks::median(&mut steps) else { return Vec::new() };
+    let Some(usual) = median(&mut steps) else { return Vec::new() };
     runs(pressure, range.clone())
         .filter(|run| {
             let next = pressure.get(run.end).copied().filter(|_| run.end < range.end);
@@ -72,12 +73,6 @@ fn runs(values: &[f64], range: Range<usize>) -> impl Iterator<Item = Range<usize
     })
 }
 
-fn resolution(values: &[f64]) -> f64 {
-    let least =
-        values.windows(2).map(|w| (w[1] - w[0]).abs()).filter(|d| *d > 1e-9).fold(f64::INFINITY, f64::min);
-    if least.is_finite() { least } else { 0.0 }
-}
-
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -85,7 +80,7 @@ mod tests {
     #[test]
     fn temperature_that_stands_still_is_found() {
         let p: Vec<f64> = (0..2000).map(f64::from).collect();
-        let mut t: Vec<f64> = p.iter().map(|p| ((20.0 - p * 0.005) * 1e4).round() / 1e4).collect();
+        let mut t: Vec<f64> = p.iter().map(|p| ((20.0 - p * 0.005_17) * 1e4).round() / 1e4).collect();
         assert!(find(&t, &p, 0..2000, &TEMPERATURE).is_empty());
         let value = t[700];
         t[700..800].fill(value);

@@ -1,0 +1,9 @@
+//! From the water column to depths: of a pressure, of the deepest point, below a datum, at a reference point.
+
+mod deepest;
+mod ladder;
+mod model;
+
+pub use deepest::{Deepest, LONGEST_WINDOW_S};
+pub use ladder::{Rung, ladder};
+pub use model::{Model, Place, Shift};
