@@ -1,2 +1,20 @@
-//! Command line of seaplumb.
-fn main() {}
+//! The command line of seaplumb: parse, run, exit status.
+
+use clap::Parser;
+use seaplumb::cli::{Cli, run};
+use std::io::{Write, stderr, stdout};
+use std::process::ExitCode;
+
+fn main() -> ExitCode {
+    let cli = Cli::parse();
+    match run(&cli, &mut stdout().lock(), &mut stderr().lock()) {
+        Ok(code) => code,
+        Err(failure) => {
+            if !failure.is_quiet() {
+                // When standard error is gone there is nobody left to tell.
+                let _ = writeln!(stderr().lock(), "seaplumb: {failure}");
+            }
+            failure.exit_code()
+        }
+    }
+}

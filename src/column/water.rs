@@ -120,6 +120,17 @@ impl Water {
         self.salt
     }
 
+    /// What its salt is made of.
+    pub fn composition(&self) -> Composition {
+        self.composition
+    }
+
+    /// The same water, continued at least to `to_dbar`.
+    #[must_use]
+    pub fn continued_to(&self, to_dbar: f64) -> Self {
+        Self { continued_to_dbar: self.continued_to_dbar.max(to_dbar), ..self.clone() }
+    }
+
     /// Pressure in dbar to which the water is known or continued.
     pub fn deepest_dbar(&self) -> f64 {
         self.nodes[self.nodes.len() - 1].pressure_dbar.max(self.continued_to_dbar)
@@ -132,6 +143,11 @@ impl Water {
         let every = every.clamp(1, last);
         let nodes = (0..last).step_by(every).chain([last]).map(|i| self.nodes[i]).collect();
         Self { nodes, ..self.clone() }
+    }
+
+    /// Absolute Salinity in g/kg of a level.
+    pub fn salinity_of_level_g_kg(&self, node: &WaterNode) -> f64 {
+        self.absolute_salinity_g_kg(node, &WaterShift::default())
     }
 
     /// Absolute Salinity in g/kg of a level, with the errors of `shift`.

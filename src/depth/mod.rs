@@ -4,6 +4,6 @@ mod deepest;
 mod ladder;
 mod model;
 
-pub use deepest::{Deepest, LONGEST_WINDOW_S};
+pub use deepest::{ASSUMED_NOISE_DBAR, Deepest, LONGEST_WINDOW_S};
 pub use ladder::{Rung, ladder};
 pub use model::{Model, Place, Shift};

@@ -1,0 +1,9 @@
+//! The command line: what was typed becomes a request, the request becomes results.
+
+mod args;
+mod output;
+mod request;
+mod run;
+
+pub use args::Cli;
+pub use run::{Failure, run};

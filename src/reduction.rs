@@ -1,0 +1,414 @@
+//! The whole way of one log: cast, water column, depth, uncertainty.
+
+use crate::cast::{Cast, Leg, TareBasis};
+use crate::column::{Column, ProfileError, Salt, Water, WaterNode, bin_means, mean_of_legs};
+use crate::depth::{Deepest, Model, Place, Rung, ladder};
+use crate::gravity::SurfaceGravity;
+use crate::log::{Flag, Log, LogError, PressureKind};
+use crate::seawater::{VALID_TO_DBAR, density_kg_m3};
+use crate::settings::{LegChoice, Settings};
+use crate::uncertainty::{Budget, DepthUncertainty, Evidence, SurveyOrder, WaterOrigin, survey_orders};
+use crate::warning::Warning;
+
+/// A leg must span this share of the cast to speak for its water.
+const SPAN_SHARE: f64 = 0.5;
+/// The other leg must span this share to be held against the chosen one.
+const COMPARE_SHARE: f64 = 0.9;
+
+/// A log, reduced to depths.
+pub struct Reduction {
+    /// The log.
+    pub log: Log,
+    /// Latitude that was used, in degrees.
+    pub latitude_deg: f64,
+    /// Longitude, in degrees, when known.
+    pub longitude_deg: Option<f64>,
+    /// The cast: sea pressure, legs, flags.
+    pub cast: Cast,
+    /// Water, place and day.
+    pub model: Model,
+    /// The integrated column.
+    pub column: Column,
+    /// From where the water comes.
+    pub origin: WaterOrigin,
+    /// Words for it.
+    pub water_words: String,
+    /// Uncertainty at every pressure.
+    pub uncertainty: DepthUncertainty,
+    /// The deepest point.
+    pub deepest: Deepest,
+    /// Depth of the deepest point in m, below the datum at the reference point.
+    pub deepest_m: f64,
+    /// Budget of the deepest depth.
+    pub budget: Budget,
+    /// Steps from the shortcut to the full answer.
+    pub ladder: Vec<Rung>,
+    /// Survey orders.
+    pub survey_orders: Vec<SurveyOrder>,
+    /// What depths are counted from.
+    pub datum: String,
+    /// What was assumed for want of better knowledge, as sentences.
+    pub assumptions: Vec<String>,
+    /// What was noticed.
+    pub warnings: Vec<Warning>,
+}
+
+/// One sample of a reduced log. Values that the log cannot tell are NaN.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Sample {
+    /// Seconds since the first sample.
+    pub time_s: f64,
+    /// Sea pressure in dbar.
+    pub pressure_dbar: f64,
+    /// Depth in m, below the datum at the reference point.
+    pub depth_m: f64,
+    /// Its standard uncertainty in m.
+    pub u_depth_m: f64,
+    /// Density in kg/m3 where the water of the sample can be trusted.
+    pub density_kg_m3: f64,
+    /// Part of the cast.
+    pub leg: Leg,
+    /// Flag of the sample.
+    pub flag: Flag,
+}
+
+impl Reduction {
+    /// Reduces a log.
+    ///
+    /// # Errors
+    /// [`LogError`] when the latitude is not known, or the log cannot be read as a cast (see [`Cast::new`]), has no sample in
+    /// the water, or too little water to make a profile of.
+    pub fn new(log: Log, settings: &Settings) -> Result<Self, LogError> {
+        let (latitude_deg, longitude_deg) = position(&log, settings)?;
+        let cast_settings = settings.cast();
+        let cast = Cast::new(&log, &cast_settings)?;
+        let elapsed_s = log.time.as_ref().map(|t| t.elapsed_s.as_slice());
+        let deepest = Deepest::find(&cast, elapsed_s).ok_or_else(|| {
+            LogError::new(&log.source, "no sample in the water has a pressure that can be used")
+        })?;
+
+        let mut warnings = cast.warnings.clone();
+        let deepest_dbar = deepest.pressure_dbar.max(deepest.raw_pressure_dbar);
+        let not_water = |e: ProfileError| {
+            LogError::new(&log.source, format!("the water column cannot be built: {e}"))
+                .remedy("give the water of a nearby cast: --profile FILE")
+        };
+        let chosen = choose_water(&log, &cast, settings, deepest_dbar, &mut warnings).map_err(not_water)?;
+
+        let place = Place {
+            latitude_deg,
+            surface_dbar: cast_settings.surface_dbar(),
+            surface_gravity: settings.surface_gravity.unwrap_or(SurfaceGravity::Disturbance(0.0)),
+            gradient_eotvos: settings.gradient_eotvos.unwrap_or(0.0),
+            geoid_height_m: settings.geoid_height_m.unwrap_or(0.0),
+            water_level_m: settings.water_level_m.unwrap_or(0.0),
+            reference_below_sensor_m: settings.reference_below_sensor_m.unwrap_or(0.0),
+        };
+        let model = Model { water: chosen.water, place };
+        let column = model.column().map_err(not_water)?;
+        let evidence = Evidence {
+            tare: &cast.tare,
+            noise: &cast.noise,
+            origin: chosen.origin,
+            other_leg: chosen.other_leg.as_ref(),
+            pressure_follows_air: cast.tare.follows_air() || cast.pressure_kind == PressureKind::Gauge,
+            air_pressure_given: settings.air_pressure_hpa.is_some(),
+            supplied: &settings.uncertainties,
+        };
+        let uncertainty =
+            DepthUncertainty::evaluate(&model, &column, deepest_dbar, &evidence).map_err(not_water)?;
+        let slope = column.depth_per_pressure_m_dbar(deepest.pressure_dbar);
+        let budget = uncertainty.budget(&deepest, slope, settings.coverage_probability);
+        let deepest_m = place.below_datum_m(column.depth_m(deepest.pressure_dbar));
+        let ladder = ladder(&model, deepest.pressure_dbar).map_err(not_water)?;
+        let survey_orders = survey_orders(deepest_m, budget.expanded_for_m(0.95));
+
+        warnings.extend(noticed(&cast, &model, &deepest));
+        let assumptions = assumed(&cast, settings);
+        Ok(Self {
+            latitude_deg,
+            longitude_deg,
+            model,
+            column,
+            origin: chosen.origin,
+            water_words: chosen.words,
+            uncertainty,
+            deepest,
+            deepest_m,
+            budget,
+            ladder,
+            survey_orders,
+            datum: settings.datum(),
+            assumptions,
+            warnings,
+            cast,
+            log,
+        })
+    }
+
+    /// Number of samples.
+    pub fn len(&self) -> usize {
+        self.cast.len()
+    }
+
+    /// Whether the log has no sample.
+    pub fn is_empty(&self) -> bool {
+        self.cast.is_empty()
+    }
+
+    /// Depth in m, below the datum at the reference point, at a sea pressure in dbar.
+    pub fn depth_m(&self, pressure_dbar: f64) -> f64 {
+        self.model.place.below_datum_m(self.column.depth_m(pressure_dbar))
+    }
+
+    /// Sample `i` of the log.
+    pub fn sample(&self, i: usize) -> Sample {
+        let pressure_dbar = self.cast.pressure_dbar[i];
+        let leg = self.cast.legs.of(i);
+        let (depth_m, u_depth_m) = if pressure_dbar.is_finite() {
+            let slope = self.column.depth_per_pressure_m_dbar(pressure_dbar);
+            (self.depth_m(pressure_dbar), self.uncertainty.of_sample_m(pressure_dbar, slope))
+        } else {
+            (f64::NAN, f64::NAN)
+        };
+        Sample {
+            time_s: self.log.time.as_ref().map_or(f64::NAN, |t| t.elapsed_s[i]),
+            pressure_dbar,
+            depth_m,
+            u_depth_m,
+            density_kg_m3: self.density_kg_m3(i),
+            leg,
+            flag: self.cast.flag(i),
+        }
+    }
+
+    /// In-situ density in kg/m3 of sample `i`: from its own salinity and temperature where the log has them and they can
+    /// be trusted, from the column where the log has none, NaN on deck and where they cannot.
+    fn density_kg_m3(&self, i: usize) -> f64 {
+        if self.cast.legs.of(i) == Leg::Deck || !self.cast.pressure_dbar[i].is_finite() {
+            return f64::NAN;
+        }
+        let p = self.cast.pressure_dbar[i];
+        match &self.log.temperature {
+            Some(t) if !self.cast.practical_salinity.is_empty() => {
+                if !self.cast.water_usable(i) {
+                    return f64::NAN;
+                }
+                let s = self.composition().absolute_salinity_g_kg(self.cast.practical_salinity[i]);
+                density_kg_m3(s, t.values[i], p)
+            }
+            _ => self.column.specific_volume_m3_kg(p).recip(),
+        }
+    }
+
+    fn composition(&self) -> crate::seawater::Composition {
+        self.model.water.composition()
+    }
+
+    /// Seconds spent within a metre of the deepest depth, when the log tells time.
+    pub fn time_within_a_metre_s(&self) -> Option<f64> {
+        let elapsed_s = self.log.time.as_ref().map(|t| t.elapsed_s.as_slice());
+        self.deepest.time_within_s(&self.cast, elapsed_s, 1.0, |p| self.depth_m(p))
+    }
+}
+
+/// Latitude and longitude by the user's word, else the log's.
+fn position(log: &Log, settings: &Settings) -> Result<(f64, Option<f64>), LogError> {
+    let of_log = log.position;
+    let latitude = settings.latitude_deg.or(of_log.map(|p| p.latitude_deg)).ok_or_else(|| {
+        LogError::new(&log.source, "the latitude is not known, and depth depends on it by up to 0.5 %")
+            .remedy("give it: --lat DEGREES (north positive), and --lon DEGREES")
+    })?;
+    if !(-90.0..=90.0).contains(&latitude) {
+        return Err(LogError::new(&log.source, format!("a latitude of {latitude} degrees is none"))
+            .remedy("give one from -90 to 90: --lat DEGREES"));
+    }
+    Ok((latitude, settings.longitude_deg.or(of_log.and_then(|p| p.longitude_deg))))
+}
+
+struct ChosenWater {
+    water: Water,
+    other_leg: Option<Water>,
+    origin: WaterOrigin,
+    words: String,
+}
+
+/// The water by the user's word: another cast's profile, else the chosen leg, else the standard ocean.
+fn choose_water(
+    log: &Log,
+    cast: &Cast,
+    settings: &Settings,
+    deepest_dbar: f64,
+    warnings: &mut Vec<Warning>,
+) -> Result<ChosenWater, ProfileError> {
+    if let Some(other) = &settings.profile {
+        let reach = other.water.nodes()[other.water.nodes().len() - 1].pressure_dbar;
+        if reach < deepest_dbar - 1.0 {
+            warnings.push(continued(&format!("the profile of {}", other.source), reach, deepest_dbar));
+        }
+        return Ok(ChosenWater {
+            water: other.water.continued_to(deepest_dbar),
+            other_leg: None,
+            origin: WaterOrigin::OtherCast,
+            words: format!("profile of {}", other.source),
+        });
+    }
+    let levels = |leg| leg_levels(log, cast, leg);
+    let (down, up) = (levels(Leg::Down), levels(Leg::Up));
+    let spans = |nodes: &[WaterNode], share: f64| {
+        nodes.len() > 1
+            && nodes[nodes.len() - 1].pressure_dbar - nodes[0].pressure_dbar > share * deepest_dbar
+    };
+    let (down_speaks, up_speaks) = (spans(&down, SPAN_SHARE), spans(&up, SPAN_SHARE));
+    let leg = match settings.leg {
+        LegChoice::Both if down_speaks && up_speaks => LegChoice::Both,
+        LegChoice::Up if up_speaks => LegChoice::Up,
+        _ if down_speaks => LegChoice::Down,
+        _ if up_speaks => LegChoice::Up,
+        _ if down.len() + up.len() > 1 => LegChoice::Both,
+        _ => {
+            warnings.push(Warning::new(
+                "standard_ocean",
+                "no water of this cast is known: the standard ocean (35.165 04 g/kg, 0 degC) stands in for it, which may put the depth wrong by metres",
+                "give the water of a nearby cast: --profile FILE",
+            ));
+            return Ok(ChosenWater {
+                water: Water::standard_ocean(deepest_dbar),
+                other_leg: None,
+                origin: WaterOrigin::StandardOcean,
+                words: "standard ocean (no conductivity or salinity in the log)".to_string(),
+            });
+        }
+    };
+    if leg != settings.leg {
+        let name = |leg| match leg {
+            LegChoice::Down => "the down leg",
+            LegChoice::Up => "the up leg",
+            LegChoice::Both => "both legs",
+        };
+        warnings.push(Warning::new(
+            "other_leg_used",
+            format!(
+                "{} spans too little of the cast; the water is that of {}",
+                name(settings.leg),
+                name(leg)
+            ),
+            "",
+        ));
+    }
+    let salt = if log.conductivity.is_some() { Salt::Conductivity } else { Salt::Practical };
+    let water = |nodes: Vec<WaterNode>| Water::new(nodes, salt, settings.composition, deepest_dbar);
+    let other_leg = match leg {
+        LegChoice::Down if spans(&up, COMPARE_SHARE) => Some(water(up.clone())?),
+        LegChoice::Up if spans(&down, COMPARE_SHARE) => Some(water(down.clone())?),
+        LegChoice::Both if spans(&up, COMPARE_SHARE) => Some(water(up.clone())?),
+        _ => None,
+    };
+    let (nodes, words) = match leg {
+        LegChoice::Down => (down, "down leg"),
+        LegChoice::Up => (up, "up leg"),
+        LegChoice::Both => (mean_of_legs(&down, &up), "mean of down and up leg"),
+    };
+    let reach = nodes.last().map_or(0.0, |n| n.pressure_dbar);
+    if reach < deepest_dbar - 2.0 {
+        warnings.push(continued("the water of this cast", reach, deepest_dbar));
+    }
+    Ok(ChosenWater {
+        water: water(nodes)?,
+        other_leg,
+        origin: WaterOrigin::Log,
+        words: format!("{words}, averaged by 1 dbar"),
+    })
+}
+
+fn continued(what: &str, reach_dbar: f64, deepest_dbar: f64) -> Warning {
+    Warning::new(
+        "water_continued",
+        format!(
+            "{what} ends at {reach_dbar:.0} dbar; below, down to {deepest_dbar:.0} dbar, its last salinity and potential temperature are kept"
+        ),
+        "",
+    )
+}
+
+/// Levels of one leg; the bottom belongs to either.
+fn leg_levels(log: &Log, cast: &Cast, leg: Leg) -> Vec<WaterNode> {
+    let (Some(t), Some(salt)) = (&log.temperature, log.conductivity.as_ref().or(log.salinity.as_ref()))
+    else {
+        return Vec::new();
+    };
+    let samples = cast.legs.range(leg).chain(cast.legs.range(Leg::Bottom));
+    bin_means(samples.filter(|&i| cast.water_usable(i)).map(|i| WaterNode {
+        pressure_dbar: cast.pressure_dbar[i],
+        temperature_degc: t.values[i],
+        salt: salt.values[i],
+    }))
+}
+
+/// What the result shows that the user should know.
+fn noticed(cast: &Cast, model: &Model, deepest: &Deepest) -> Vec<Warning> {
+    let mut warnings = Vec::new();
+    if deepest.pressure_dbar > VALID_TO_DBAR {
+        warnings.push(Warning::new(
+            "equation_of_state_extrapolated",
+            format!(
+                "beyond {VALID_TO_DBAR:.0} dbar (100 MPa) the equation of state is extrapolated; its term is widened"
+            ),
+            "",
+        ));
+    }
+    if let Some(step) = cast.noise.averaged_step_dbar {
+        warnings.push(Warning::new(
+            "averaged_log",
+            format!("the log is averaged in steps of {step:.4} dbar: the deepest depth is that of its deepest step"),
+            "",
+        ));
+    }
+    let water = model.water.nodes();
+    let salinities: Vec<f64> = water.iter().map(|n| model.water.salinity_of_level_g_kg(n)).collect();
+    let outside = water
+        .iter()
+        .zip(&salinities)
+        .filter(|(n, s)| !(0.0..=42.0).contains(*s) || !(-6.0..=40.0).contains(&n.temperature_degc))
+        .count();
+    if outside > 0 {
+        warnings.push(Warning::new(
+            "outside_validity",
+            format!("{outside} levels of the water lie outside what the equation of state is stated for (0 to 42 g/kg, -6 to 40 degC)"),
+            "check units and columns",
+        ));
+    }
+    warnings
+}
+
+/// What was assumed about how the log is to be read (the budget tells what was assumed of its terms).
+fn assumed(cast: &Cast, settings: &Settings) -> Vec<String> {
+    let mut sentences = Vec::new();
+    if !cast.pressure_kind_known {
+        sentences.push("pressure counts as sea pressure (absolute less 101 325 Pa): --pressure".to_string());
+    }
+    if settings.air_pressure_hpa.is_none() {
+        sentences.push("air pressure 1013.25 hPa: --air-pressure HPA".to_string());
+    }
+    if cast.tare.basis == TareBasis::Assumed {
+        let why = if cast.deck.is_some() { "as asked" } else { "no samples on deck" };
+        sentences.push(format!("zero offset of the pressure sensor 0 dbar ({why}): --tare DBAR"));
+    }
+    if settings.surface_gravity.is_none() {
+        sentences.push("gravity disturbance 0 mGal: --gravity-anomaly MGAL".to_string());
+    }
+    if settings.gradient_eotvos.is_none() {
+        sentences.push("gravity gradient anomaly 0 E: --gravity-gradient EOTVOS".to_string());
+    }
+    if settings.geoid_height_m.is_none() {
+        sentences.push("geoid height 0 m: --geoid-height M".to_string());
+    }
+    if settings.water_level_m.is_none() {
+        sentences.push("water level 0 m above the datum: --water-level M".to_string());
+    }
+    if settings.reference_below_sensor_m.is_none() {
+        sentences.push("the reference point is the pressure sensor: --reference-below M".to_string());
+    }
+    sentences.push("reference composition of the salt".to_string());
+    sentences
+}

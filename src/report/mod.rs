@@ -1,0 +1,50 @@
+//! Results on paper: one file per output, all from one [`Reduction`].
+
+mod deepest_csv;
+mod deepest_json;
+mod deepest_text;
+mod number;
+mod series_csv;
+mod series_json;
+
+pub use deepest_csv::DeepestCsv;
+pub use deepest_json::DeepestJson;
+pub use deepest_text::DeepestText;
+pub use series_csv::SeriesCsv;
+pub use series_json::SeriesJson;
+
+use crate::reduction::Reduction;
+use std::io::{self, Write};
+
+/// What everyone who uses a depth must know, once in each report for people.
+pub const CAUTION: &str = "Not for navigation, not for life support, not for deciding how deep a hull may go: there the \
+vehicle's certificate, the class rules, the pilot and the hydrographic office decide.";
+
+/// A way to write results: begun once, one cast after the other, ended once.
+pub trait Report {
+    /// Ending of the names of files that hold it.
+    fn extension(&self) -> &'static str;
+
+    /// What stands before the first cast.
+    ///
+    /// # Errors
+    /// Those of the writer.
+    fn begin(&mut self, out: &mut dyn Write) -> io::Result<()>;
+
+    /// One cast.
+    ///
+    /// # Errors
+    /// Those of the writer.
+    fn cast(&mut self, out: &mut dyn Write, reduction: &Reduction) -> io::Result<()>;
+
+    /// What stands after the last cast.
+    ///
+    /// # Errors
+    /// Those of the writer.
+    fn end(&mut self, out: &mut dyn Write) -> io::Result<()>;
+
+    /// Whether several casts may follow each other in one output.
+    fn holds_many(&self) -> bool {
+        true
+    }
+}
