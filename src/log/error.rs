@@ -2,6 +2,8 @@
 
 use std::fmt;
 
+use super::input::decode;
+
 /// Where in a log something was found. Lines and columns count from 1; a column counts characters.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Place {
@@ -15,13 +17,44 @@ pub struct Place {
     pub width: usize,
 }
 
+impl Place {
+    /// Characters of a line that are shown at least.
+    const SHOWN: usize = 100;
+
+    /// A whole line.
+    pub fn line(line: u64, text: &str) -> Self {
+        Self { line, column: None, text: Some(shown(text, Self::SHOWN)), width: 0 }
+    }
+
+    /// A cell of a line: `start` and `length` count bytes of `bytes`.
+    pub(super) fn span(line: u64, bytes: &[u8], start: usize, length: usize) -> Self {
+        let start = start.min(bytes.len());
+        let end = (start + length).min(bytes.len());
+        let before = decode(&bytes[..start]).chars().count();
+        let width = decode(&bytes[start..end]).trim_end().chars().count().max(1);
+        let text = shown(&decode(bytes), Self::SHOWN.max(before + width + 10));
+        Self { line, column: Some(before + 1), text: Some(text), width }
+    }
+}
+
+/// The first `limit` characters, without control characters that would upset a terminal.
+fn shown(text: &str, limit: usize) -> String {
+    let text = text.trim_end_matches(['\r', '\n']);
+    let clean = text.chars().take(limit).map(|c| if c.is_control() && c != '\t' { '\u{fffd}' } else { c });
+    let mut shown: String = clean.collect();
+    if text.chars().nth(limit).is_some() {
+        shown.push('…');
+    }
+    shown
+}
+
 /// A log that cannot be read or understood.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct LogError {
     /// The log, as the user named it.
     pub file: String,
     /// Where in it, when a line is to blame.
-    pub place: Option<Place>,
+    pub place: Option<Box<Place>>,
     /// What was found and what was expected.
     pub problem: String,
     /// What settles it: an option to type, a thing to check.
@@ -44,7 +77,7 @@ impl LogError {
     /// The same error, at a place.
     #[must_use]
     pub fn at(mut self, place: Place) -> Self {
-        self.place = Some(place);
+        self.place = Some(Box::new(place));
         self
     }
 }
@@ -59,10 +92,12 @@ impl fmt::Display for LogError {
             }
         }
         write!(f, ": {}", self.problem)?;
-        if let Some(Place { text: Some(text), column, width, .. }) = &self.place {
+        if let Some(place) = &self.place
+            && let Place { text: Some(text), column, width, .. } = place.as_ref()
+        {
             write!(f, "\n  | {}", text.replace('\t', " "))?;
             if let Some(column) = column {
-                write!(f, "\n  | {}{}", " ".repeat(column - 1), "^".repeat((*width).max(1)))?;
+                write!(f, "\n  | {}{}", " ".repeat(column.saturating_sub(1)), "^".repeat((*width).max(1)))?;
             }
         }
         if let Some(remedy) = &self.remedy {

@@ -4,9 +4,25 @@
 //! channels are always in the units that [`Role::unit`] names, in the order of the file, with
 //! missing values as NaN. Nothing is dropped and nothing is judged here.
 
+mod axis;
+mod choice;
+mod columns;
+mod delimited;
+mod dialect;
 mod error;
+mod flags;
+mod format;
+mod header;
+mod input;
+mod number;
+mod position;
+mod role;
+mod rows;
+mod time;
+mod unit;
 
 pub use error::{LogError, Place};
+pub use format::{read, read_bytes};
 
 use crate::warning::Warning;
 
