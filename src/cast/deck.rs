@@ -13,9 +13,9 @@ pub struct Deck {
 }
 
 /// Salt below this share of what the water has is air.
-const AIR_SHARE: f64 = 0.1;
+pub(super) const AIR_SHARE: f64 = 0.1;
 /// Only water saltier than this (mS/cm or Practical Salinity) tells itself from air by salt.
-const TELLING_SALT: f64 = 5.0;
+pub(super) const TELLING_SALT: f64 = 5.0;
 /// How far in dbar readings on deck may be from each other where salt tells of air.
 const WANDER_WITH_SALT_DBAR: f64 = 1.0;
 /// The same where pressure alone must tell: an instrument hanging in the sea feels the swell.
@@ -27,7 +27,12 @@ const FEWEST: usize = 5;
 
 /// Finds the samples on deck: the first and the last stretch of the log at steady low pressure, and with hardly any salt
 /// where the log tells salt. `expected_dbar` is what the sensor should read in air.
-pub(super) fn find(blocks: &Blocks, pressure: &[f64], expected_dbar: f64) -> Option<Deck> {
+pub(super) fn find(
+    blocks: &Blocks,
+    pressure: &[f64],
+    salt: Option<&[f64]>,
+    expected_dbar: f64,
+) -> Option<Deck> {
     let (low, high) = blocks.range();
     if high - low < 1.0 {
         return None;
@@ -62,8 +67,21 @@ pub(super) fn find(blocks: &Blocks, pressure: &[f64], expected_dbar: f64) -> Opt
     let before = stretch(&mut (0..blocks.len())) * blocks.size;
     let after = stretch(&mut (0..blocks.len()).rev());
     let after = blocks.len().saturating_sub(after) * blocks.size;
+    // Blocks settle it to within a block; where salt tells air from water, samples settle the rest.
+    let in_air = |i: usize| match (in_water, salt) {
+        (Some(water), Some(salt)) => salt[i] < AIR_SHARE * water,
+        _ => false,
+    };
+    let mut before = before.min(pressure.len());
+    while before > 0 && before < pressure.len() && in_air(before) {
+        before += 1;
+    }
+    let mut after = after.min(pressure.len()).max(before);
+    while after > before && after < pressure.len() && in_air(after - 1) {
+        after -= 1;
+    }
     let deck = Deck {
-        before: if before >= FEWEST { 0..before.min(pressure.len()) } else { 0..0 },
+        before: if before >= FEWEST { 0..before } else { 0..0 },
         after: if after + FEWEST <= pressure.len() {
             after..pressure.len()
         } else {
@@ -91,7 +109,7 @@ mod tests {
     use super::*;
 
     fn found(pressure: &[f64], salt: Option<&[f64]>) -> Option<Deck> {
-        find(&Blocks::new(pressure, salt), pressure, 0.0)
+        find(&Blocks::new(pressure, salt), pressure, salt, 0.0)
     }
 
     fn dive() -> (Vec<f64>, Vec<f64>) {

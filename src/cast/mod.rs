@@ -84,9 +84,10 @@ impl Cast {
         }
 
         let salt = log.conductivity.as_ref().or(log.salinity.as_ref());
-        let blocks = blocks::Blocks::new(&log.pressure.values, salt.map(|c| c.values.as_slice()));
+        let salt = salt.map(|c| c.values.as_slice());
+        let blocks = blocks::Blocks::new(&log.pressure.values, salt);
         let expected_dbar = tare::expected_on_deck_dbar(kind, settings.air_pressure_hpa);
-        let deck = deck::find(&blocks, &log.pressure.values, expected_dbar);
+        let deck = deck::find(&blocks, &log.pressure.values, salt, expected_dbar);
         let tare = tare::settle(log, settings, kind, known.is_some(), deck.as_ref())?;
 
         let to_sea_dbar = match kind {

@@ -5,6 +5,8 @@ mod reversal;
 mod spike;
 mod stuck;
 
+use super::blocks::median;
+use super::deck::{AIR_SHARE, TELLING_SALT};
 use super::legs::{Leg, Legs};
 use super::noise::Noise;
 use crate::log::{Channel, Flag, Log};
@@ -25,6 +27,8 @@ pub enum Quantity {
 pub enum Reason {
     /// Outside what the sea has.
     Range,
+    /// Out of the water for a moment, in the swell at the surface.
+    InAir,
     /// Alone far off its neighbours.
     Spike,
     /// The same value while the instrument moved on.
@@ -42,6 +46,7 @@ impl Reason {
     pub fn name(self) -> &'static str {
         match self {
             Reason::Range => "out of range",
+            Reason::InAir => "out of the water",
             Reason::Spike => "spike",
             Reason::Stuck => "stuck value",
             Reason::Reversal => "reversal",
@@ -53,7 +58,7 @@ impl Reason {
     /// The IOC flag that it earns: bad where the value is certainly not that of the water, else questionable.
     pub fn flag(self) -> Flag {
         match self {
-            Reason::Range | Reason::Spike | Reason::Stuck => Flag::Bad,
+            Reason::Range | Reason::InAir | Reason::Spike | Reason::Stuck => Flag::Bad,
             Reason::Reversal | Reason::PumpOff | Reason::Logged => Flag::Questionable,
         }
     }
@@ -76,6 +81,9 @@ const PRESSURE_DBAR: (f64, f64) = (-3.0, 11_600.0);
 const TEMPERATURE_DEGC: (f64, f64) = (-4.0, 42.0);
 /// Practical Salinities that occur.
 const SALINITY: (f64, f64) = (-0.1, 50.0);
+
+/// An instrument this near the surface in dbar may come out of the water.
+const AT_SURFACE_DBAR: f64 = 3.0;
 
 /// Runs the tests over a cast and collects flags.
 pub(super) struct Judge<'a> {
@@ -114,6 +122,7 @@ impl<'a> Judge<'a> {
         self.missing();
         self.logged();
         self.ranges();
+        self.in_air();
         self.spikes();
         self.stuck();
         self.pump_off();
@@ -193,6 +202,23 @@ impl<'a> Judge<'a> {
             }
             if self.salinity.get(i).is_some_and(|s| outside(*s, SALINITY)) {
                 self.accuse(i, Quantity::Salt, Reason::Range, Reason::Range.flag());
+            }
+        }
+    }
+
+    /// Hardly any salt at the surface of a salty sea.
+    fn in_air(&mut self) {
+        let Some(salt) = self.salt() else { return };
+        let mut deeper: Vec<f64> = self
+            .legs
+            .water()
+            .filter(|&i| self.pressure[i] > AT_SURFACE_DBAR && salt.values[i].is_finite())
+            .map(|i| salt.values[i])
+            .collect();
+        let Some(usual) = median(&mut deeper).filter(|&s| s > TELLING_SALT) else { return };
+        for i in self.legs.water() {
+            if self.pressure[i] < AT_SURFACE_DBAR && salt.values[i] < AIR_SHARE * usual {
+                self.accuse(i, Quantity::Salt, Reason::InAir, Reason::InAir.flag());
             }
         }
     }

@@ -142,7 +142,7 @@ fn reduce_all(
 fn note(notes: &mut dyn Write, reduction: &Reduction) -> io::Result<()> {
     writeln!(
         notes,
-        "{}: {} samples, deepest {:.2} m +/- {:.2} m ({} %)",
+        "{}: {} samples, deepest {:.2} m ± {:.2} m ({} %)",
         reduction.log.source,
         reduction.len(),
         reduction.deepest_m,

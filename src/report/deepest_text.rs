@@ -52,7 +52,7 @@ fn statement(out: &mut dyn Write, r: &Reduction) -> io::Result<()> {
     writeln!(out, "{}{station}\n", r.log.source)?;
     writeln!(
         out,
-        "  Deepest depth   {} m  +/- {} m",
+        "  Deepest depth   {} m  ± {} m",
         grouped(r.deepest_m, 2),
         grouped(b.expanded_uncertainty_m(), 2)
     )?;
@@ -174,7 +174,7 @@ fn budget(out: &mut dyn Write, r: &Reduction) -> io::Result<()> {
     let mut terms: Vec<&BudgetTerm> = b.terms.iter().collect();
     terms.sort_by(|a, b| b.contribution_m.total_cmp(&a.contribution_m));
     for t in terms {
-        let bar = "#".repeat((t.share * BAR as f64).round() as usize);
+        let bar = "\u{25a0}".repeat((t.share * BAR as f64).round() as usize);
         let unit = if t.unit == "1" { "" } else { t.unit };
         let row = format!(
             "  {:<25}{:>10}  {unit:<7}{:>10.4}{:>7.1} %  {:<8}  {bar}",
