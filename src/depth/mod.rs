@@ -3,7 +3,9 @@
 mod deepest;
 mod ladder;
 mod model;
+mod shortcut;
 
 pub use deepest::{ASSUMED_NOISE_DBAR, Deepest, LONGEST_WINDOW_S};
 pub use ladder::{Rung, ladder};
 pub use model::{Model, Place, Shift};
+pub use shortcut::unesco_44_depth_m;
