@@ -110,9 +110,12 @@ pub(super) fn detect(text: &[u8], options: &ReadOptions, marks: &Marks) -> Optio
     let mut next = at + 1;
     if let Some(units) = lines.get(next) {
         let cells = header_cells(strip_comment(units.bytes), separator, fields.len());
+        // Units of other quantities need not be known; what a row of numbers could hold may not stand here.
+        let number =
+            |cell: &String| cell != "1" && look(cell.as_bytes(), separator, decimal_comma, marks).numbers > 0;
         let is_units = cells.len() == fields.len()
-            && cells.iter().all(|cell| matches!(header::bare_unit(cell), "" | "-") || header::is_unit(cell))
-            && cells.iter().any(|cell| header::is_unit(cell) && cell.parse::<f64>().is_err());
+            && !cells.iter().any(number)
+            && cells.iter().zip(&fields).any(|(cell, field)| cell != "1" && field.takes_unit(cell));
         if is_units {
             fields.iter_mut().zip(&cells).for_each(|(field, cell)| field.add_unit(cell));
             next += 1;

@@ -39,7 +39,8 @@ impl Scheme {
     /// conventions and the like say. None when nothing tells.
     pub fn from_words(values: &[i64], meanings: &str, other: &str) -> Option<Self> {
         let other = other.to_ascii_lowercase();
-        if other.contains("woce") {
+        let says = |wanted: &str| other.split(|c: char| !c.is_alphanumeric()).any(|word| word == wanted);
+        if says("woce") {
             return Some(Scheme::Woce);
         }
         let words: Vec<_> = meanings.split_ascii_whitespace().collect();
@@ -49,9 +50,9 @@ impl Scheme {
             ));
         }
         let meanings = meanings.to_ascii_lowercase();
-        if other.contains("oceansites") || other.contains("argo") || meanings.contains("probably_good") {
+        if says("oceansites") || says("argo") || meanings.contains("probably_good") {
             Some(Scheme::OceanSites)
-        } else if other.contains("ioc") || other.contains("54:v3") || other.contains("qartod") {
+        } else if says("ioc") || says("qartod") || other.contains("54:v3") {
             Some(Scheme::Ioc)
         } else {
             None

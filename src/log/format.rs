@@ -1,26 +1,29 @@
 //! The formats of logs, told apart by their content.
 
 use super::input::Input;
-use super::{Log, LogError, ReadOptions, delimited};
+use super::{Log, LogError, ReadOptions, delimited, netcdf};
 
 /// A format that can be read.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 enum Format {
+    NetCdf,
     Delimited,
 }
 
 impl Format {
     /// In the order in which they are tried; the last one takes whatever is left.
-    const ALL: [Format; 1] = [Format::Delimited];
+    const ALL: [Format; 2] = [Format::NetCdf, Format::Delimited];
 
-    fn recognises(self, _head: &[u8]) -> bool {
+    fn recognises(self, head: &[u8]) -> bool {
         match self {
+            Format::NetCdf => netcdf::recognises(head),
             Format::Delimited => true,
         }
     }
 
     fn read(self, input: &Input, options: &ReadOptions) -> Result<Vec<Log>, LogError> {
         match self {
+            Format::NetCdf => netcdf::read(input, options),
             Format::Delimited => delimited::read(input, options),
         }
     }

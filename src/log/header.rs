@@ -54,6 +54,15 @@ impl Field {
         }
     }
 
+    /// Whether `cell` holds a unit that this column can have.
+    pub fn takes_unit(&self, cell: &str) -> bool {
+        match self.recognised.map(|r| r.meaning) {
+            Some(Meaning::Role(role)) => unit::parse(role, bare_unit(cell)).is_some(),
+            Some(_) => false,
+            None => is_unit(cell),
+        }
+    }
+
     /// Whether the name means something to this program.
     pub fn is_known(&self) -> bool {
         self.recognised.is_some()
@@ -61,7 +70,7 @@ impl Field {
 }
 
 /// A unit cell without blanks, quotes and brackets.
-pub(super) fn bare_unit(cell: &str) -> &str {
+fn bare_unit(cell: &str) -> &str {
     let text = cell.trim().trim_matches('"').trim();
     for (open, close) in [('[', ']'), ('(', ')'), ('{', '}')] {
         if let Some(inner) = text.strip_prefix(open).and_then(|t| t.strip_suffix(close)) {
@@ -72,7 +81,7 @@ pub(super) fn bare_unit(cell: &str) -> &str {
 }
 
 /// Whether a cell holds a unit of any role.
-pub(super) fn is_unit(cell: &str) -> bool {
+fn is_unit(cell: &str) -> bool {
     let text = bare_unit(cell);
     Role::ALL.iter().any(|&role| unit::parse(role, text).is_some()) || super::time::since(text).is_some()
 }
@@ -81,11 +90,9 @@ pub(super) fn is_unit(cell: &str) -> bool {
 pub(super) fn unit_suffix(label: &str, role: Role) -> Option<(&str, &str)> {
     label
         .char_indices()
-        .rev()
         .filter(|(at, c)| *at > 0 && is_joint(*c))
         .map(|(at, c)| (&label[..at], &label[at + c.len_utf8()..]))
-        .filter(|(_, text)| unit::parse(role, text).is_some())
-        .last()
+        .find(|(_, text)| unit::parse(role, text).is_some())
 }
 
 fn is_joint(c: char) -> bool {

@@ -14,6 +14,7 @@ mod flags;
 mod format;
 mod header;
 mod input;
+mod netcdf;
 mod number;
 mod position;
 mod role;

@@ -251,9 +251,7 @@ impl Reader<'_> {
                         }
                     }
                     // `next` of the last cell of a line is none; its separator stands just before it.
-                    cell.next.map_or(start + line.len(), |next| {
-                        if separator == Separator::Blanks { start + next - 1 } else { start + next - 1 }
-                    })
+                    cell.next.map_or(start + line.len(), |next| start + next - 1)
                 }
             };
             // Behind the cell: a separator, or the end of the line.
