@@ -194,7 +194,7 @@ impl Reduction {
                 if !self.cast.water_usable(i) {
                     return f64::NAN;
                 }
-                let s = self.composition().absolute_salinity_g_kg(self.cast.practical_salinity[i]);
+                let s = self.composition().absolute_salinity_g_kg(self.cast.practical_salinity[i], p);
                 density_kg_m3(s, t.values[i], p)
             }
             _ => self.column.specific_volume_m3_kg(p).recip(),

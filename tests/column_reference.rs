@@ -43,8 +43,9 @@ fn check_casts_of_the_reference_library() {
         let rows: Vec<usize> = (0..table.len()).filter(|&i| cast[i] == number).collect();
         let pick = |c: usize| rows.iter().map(|&i| columns[c][i]).collect::<Vec<f64>>();
         let (p, s, t, latitude) = (pick(0), pick(1), pick(2), columns[3][rows[0]]);
-        let volume =
-            |i: usize| specific_volume_m3_kg(Composition::Reference.absolute_salinity_g_kg(s[i]), t[i], p[i]);
+        let volume = |i: usize| {
+            specific_volume_m3_kg(Composition::Reference.absolute_salinity_g_kg(s[i], p[i]), t[i], p[i])
+        };
         let profile = Profile::new(p.clone(), (0..p.len()).map(volume).collect()).expect("a profile");
         let theirs = library_gravity(latitude);
         let column = Column::integrate(&profile, 0.0, &theirs);
@@ -124,7 +125,7 @@ impl Hadal {
         let level = |i: u32| {
             let pressure_dbar = f64::from(i) * step_dbar;
             let salt = salinity(pressure_dbar);
-            let absolute = Composition::Reference.absolute_salinity_g_kg(salt);
+            let absolute = Composition::Reference.absolute_salinity_g_kg(salt, pressure_dbar);
             WaterNode {
                 pressure_dbar,
                 temperature_degc: in_situ_temperature_degc(absolute, theta(pressure_dbar), pressure_dbar),

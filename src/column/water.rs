@@ -154,12 +154,17 @@ impl Water {
     fn absolute_salinity_g_kg(&self, node: &WaterNode, shift: &WaterShift) -> f64 {
         let salt = match self.salt {
             Salt::Absolute => node.salt,
-            Salt::Practical => self.composition.absolute_salinity_g_kg(node.salt + shift.salt),
-            Salt::Conductivity => self.composition.absolute_salinity_g_kg(practical_salinity(
-                node.salt + shift.salt,
-                node.temperature_degc + shift.temperature_degc,
-                shift.pressure(node.pressure_dbar),
-            )),
+            Salt::Practical => {
+                self.composition.absolute_salinity_g_kg(node.salt + shift.salt, node.pressure_dbar)
+            }
+            Salt::Conductivity => self.composition.absolute_salinity_g_kg(
+                practical_salinity(
+                    node.salt + shift.salt,
+                    node.temperature_degc + shift.temperature_degc,
+                    shift.pressure(node.pressure_dbar),
+                ),
+                node.pressure_dbar,
+            ),
         };
         salt + shift.absolute_salinity_g_kg
     }
@@ -297,7 +302,7 @@ mod tests {
     #[test]
     fn the_gap_above_holds_the_water_of_the_first_level() {
         let profile = two_levels().profile(0.0, &WaterShift::default()).unwrap();
-        let salinity = Composition::Reference.absolute_salinity_g_kg(35.0);
+        let salinity = Composition::Reference.absolute_salinity_g_kg(35.0, 4.0);
         assert_eq!(profile.specific_volume_m3_kg()[0], specific_volume_m3_kg(salinity, 20.0, 0.0));
     }
 
@@ -315,7 +320,7 @@ mod tests {
         // Potential density of the continued water is that of the last level.
         let water = two_levels();
         let profile = water.profile(0.0, &WaterShift::default()).unwrap();
-        let salinity = Composition::Reference.absolute_salinity_g_kg(34.0);
+        let salinity = Composition::Reference.absolute_salinity_g_kg(34.0, 104.0);
         let theta = potential_temperature_degc(salinity, 10.0, 104.0);
         let t = in_situ_temperature_degc(salinity, theta, 300.0);
         assert_eq!(profile.at(300.0), specific_volume_m3_kg(salinity, t, 300.0));

@@ -16,10 +16,11 @@ pub enum Composition {
 }
 
 impl Composition {
-    /// Absolute Salinity in g/kg of water with this `practical_salinity` (PSS-78).
-    pub fn absolute_salinity_g_kg(self, practical_salinity: f64) -> f64 {
+    /// Absolute Salinity in g/kg of water with this `practical_salinity` (PSS-78) at sea pressure `pressure_dbar`, on which
+    /// an atlas of the composition depends.
+    pub fn absolute_salinity_g_kg(&self, practical_salinity: f64, _pressure_dbar: f64) -> f64 {
         let reference = REFERENCE_PER_PRACTICAL_G_KG * practical_salinity;
-        match self {
+        match *self {
             Composition::Reference => reference,
             Composition::AnomalyRatio(ratio) => reference * (1.0 + ratio),
         }
@@ -33,13 +34,13 @@ mod tests {
     #[test]
     fn thirty_five_is_the_standard_ocean() {
         // Millero et al. (2008): S_P = 35 is S_R = 35.165 04 g/kg.
-        assert_eq!(Composition::Reference.absolute_salinity_g_kg(35.0), 35.165_04);
+        assert_eq!(Composition::Reference.absolute_salinity_g_kg(35.0, 0.0), 35.165_04);
     }
 
     #[test]
     fn anomaly_ratio_scales() {
-        let reference = Composition::Reference.absolute_salinity_g_kg(34.6);
-        let anomalous = Composition::AnomalyRatio(6e-4).absolute_salinity_g_kg(34.6);
+        let reference = Composition::Reference.absolute_salinity_g_kg(34.6, 900.0);
+        let anomalous = Composition::AnomalyRatio(6e-4).absolute_salinity_g_kg(34.6, 900.0);
         assert!((anomalous / reference - 1.0 - 6e-4).abs() < 1e-15);
     }
 }

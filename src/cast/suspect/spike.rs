@@ -35,18 +35,27 @@ pub(super) fn find(values: &[f64], range: Range<usize>, least: f64) -> Vec<usize
         .collect()
 }
 
-/// Distance of value `i` from the median of itself and two finite neighbours on either side.
+/// Distance of value `i` from the median of itself and two neighbours on either side. Where one side has fewer (the ends, next
+/// to missing values) a steady rise looks like a distance; there the straight line through the two nearest neighbours has a say
+/// too.
 fn distance(v: &[f64], i: usize) -> f64 {
-    let lo = i.saturating_sub(2).min(v.len() - 5);
-    let mut window = [0.0; 5];
-    let mut count = 0;
-    for &x in &v[lo..lo + 5] {
-        if x.is_finite() {
-            window[count] = x;
-            count += 1;
-        }
+    let before = || v[..i].iter().rev().copied().filter(|x| x.is_finite()).take(2);
+    let after = || v[i + 1..].iter().copied().filter(|x| x.is_finite()).take(2);
+    let mut window = [v[i]; 5];
+    let mut count = 1;
+    for x in before().chain(after()) {
+        window[count] = x;
+        count += 1;
     }
-    median(&mut window[..count]).map_or(0.0, |m| (v[i] - m).abs())
+    let off = median(&mut window[..count]).map_or(0.0, |m| (v[i] - m).abs());
+    if before().count() == after().count() {
+        return off;
+    }
+    let off_line = |side: Vec<f64>| match side[..] {
+        [near, far] => (v[i] - (2.0 * near - far)).abs(),
+        _ => f64::INFINITY,
+    };
+    off.min(off_line(before().collect())).min(off_line(after().collect()))
 }
 
 fn usual(v: &[f64], i: usize) -> f64 {
@@ -73,6 +82,15 @@ mod tests {
     fn a_sharp_thermocline_is_none() {
         let t: Vec<f64> = (0..200).map(|i| if i < 100 { 22.0 } else { 12.0 }).collect();
         assert_eq!(find(&t, 0..200, LEAST_TEMPERATURE_DEGC), Vec::<usize>::new());
+    }
+
+    #[test]
+    fn the_ends_of_a_steady_rise_are_none_but_a_wild_end_is() {
+        let mut p: Vec<f64> = (0..100).map(|i| f64::from(i) * 2.0).collect();
+        p[50] = f64::NAN;
+        assert_eq!(find(&p, 0..100, LEAST_PRESSURE_DBAR), Vec::<usize>::new());
+        p[99] = 250.0;
+        assert_eq!(find(&p, 0..100, LEAST_PRESSURE_DBAR), vec![99]);
     }
 
     #[test]
