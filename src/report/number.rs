@@ -3,7 +3,7 @@
 /// Appends `x` with `decimals` (at most 9) decimals; nothing when it is not finite, and never a negative zero.
 pub(super) fn push_fixed(out: &mut Vec<u8>, x: f64, decimals: u32) {
     let scale = 10f64.powi(decimals as i32);
-    let scaled = (x * scale).round();
+    let scaled = (x * scale).round_ties_even();
     if !scaled.is_finite() || scaled.abs() >= 9.0e15 {
         return;
     }
