@@ -109,6 +109,13 @@ pub enum LegArg {
     Both,
 }
 
+/// What the salt is made of.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub enum CompositionArg {
+    /// Reference-composition seawater
+    Reference,
+}
+
 /// Options of every command that reduces logs.
 #[derive(Debug, Args)]
 pub struct SharedArgs {
@@ -148,6 +155,10 @@ pub struct SharedArgs {
     /// Water of a nearby cast (pressure, temperature, salinity or conductivity) in place of the log's
     #[arg(long, value_name = "FILE", help_heading = "Water")]
     pub profile: Option<String>,
+
+    /// What the salt is made of
+    #[arg(long, value_enum, default_value_t = CompositionArg::Reference, help_heading = "Water")]
+    pub composition: CompositionArg,
 
     /// Air pressure at the sea surface [default: 1013.25]
     #[arg(long, value_name = "HPA", help_heading = "Surface and datum")]

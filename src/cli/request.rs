@@ -1,9 +1,10 @@
 //! From what was typed to what is meant.
 
-use super::args::{LegArg, PressureArg, SharedArgs};
+use super::args::{CompositionArg, LegArg, PressureArg, SharedArgs};
 use crate::cast::TareChoice;
 use crate::gravity::SurfaceGravity;
 use crate::log::{ColumnChoice, PressureKind, ReadOptions};
+use crate::seawater::Composition;
 use crate::settings::{LegChoice, Settings};
 use crate::uncertainty::{Basis, Supplied, Term};
 use std::collections::BTreeMap;
@@ -55,6 +56,9 @@ pub(super) fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
             LegArg::Down => LegChoice::Down,
             LegArg::Up => LegChoice::Up,
             LegArg::Both => LegChoice::Both,
+        },
+        composition: match args.composition {
+            CompositionArg::Reference => Composition::Reference,
         },
         surface_gravity: anomaly
             .map(SurfaceGravity::FreeAirAnomaly)

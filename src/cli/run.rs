@@ -89,9 +89,8 @@ fn reduce_all(
     settings.profile = args.profile.as_deref().map(|file| read_profile(file, &settings)).transpose()?;
 
     let mut out = BufWriter::with_capacity(1 << 16, out);
-    if folder.is_none() {
-        report.begin(&mut out)?;
-    }
+    // Begun with the first result: when no log can be reduced, nothing is printed that looks like one.
+    let mut begun = false;
     let mut failed = 0;
     for source in &args.logs {
         let logs = match log::read(source, &options) {
@@ -114,7 +113,13 @@ fn reduce_all(
                 Ok(reduction) => {
                     match &mut folder {
                         Some(folder) => folder.cast(report, &reduction)?,
-                        None => report.cast(&mut out, &reduction)?,
+                        None => {
+                            if !begun {
+                                report.begin(&mut out)?;
+                                begun = true;
+                            }
+                            report.cast(&mut out, &reduction)?;
+                        }
                     }
                     if say && !args.quiet {
                         note(notes, &reduction)?;
@@ -129,7 +134,8 @@ fn reduce_all(
     }
     match folder {
         Some(folder) => folder.close()?,
-        None => report.end(&mut out)?,
+        None if begun => report.end(&mut out)?,
+        None => {}
     }
     out.flush()?;
     if failed > 0 && args.logs.len() > 1 {
