@@ -1,6 +1,6 @@
 //! The whole way of one log: cast, water column, depth, uncertainty.
 
-use crate::cast::{Cast, Leg, TareBasis};
+use crate::cast::{Cast, Leg, Quantity, Reason, TareBasis};
 use crate::column::{Column, ProfileError, Salt, Water, WaterNode, bin_means, mean_of_legs};
 use crate::depth::{Deepest, Model, Place, Rung, ladder};
 use crate::gravity::SurfaceGravity;
@@ -362,6 +362,19 @@ fn noticed(cast: &Cast, model: &Model, deepest: &Deepest) -> Vec<Warning> {
             "averaged_log",
             format!("the log is averaged in steps of {step:.4} dbar: the deepest depth is that of its deepest step"),
             "",
+        ));
+    }
+    let deeper = cast
+        .suspects
+        .iter()
+        .filter(|s| (s.quantity, s.reason) == (Quantity::Pressure, Reason::Logged))
+        .filter(|s| cast.pressure_dbar[s.sample] > deepest.raw_pressure_dbar)
+        .count();
+    if deeper > 0 {
+        warnings.push(Warning::new(
+            "flagged_deeper",
+            format!("{deeper} samples that the log flags as not good are deeper than the deepest depth; they are left out of it"),
+            "see the flags of the log",
         ));
     }
     let water = model.water.nodes();

@@ -139,13 +139,16 @@ impl<'a> Judge<'a> {
         self.log.conductivity.as_ref().or(self.log.salinity.as_ref())
     }
 
+    /// Notes a suspicion. The first one stands: what the log itself flags is not judged anew, and one fault is told once.
     fn accuse(&mut self, sample: usize, quantity: Quantity, reason: Reason, flag: Flag) {
         let kept = match quantity {
             Quantity::Pressure => &mut self.pressure_flag[sample],
             Quantity::Temperature | Quantity::Salt => &mut self.water_flag[sample],
         };
-        *kept = (*kept).max(flag);
-        self.suspects.push(Suspect { sample, quantity, reason });
+        if kept.usable() {
+            *kept = flag;
+            self.suspects.push(Suspect { sample, quantity, reason });
+        }
     }
 
     /// Missing values: of pressure always, of the water where the log has these columns and is not on deck.
@@ -173,8 +176,8 @@ impl<'a> Judge<'a> {
             (Quantity::Pressure, log.pressure.flags.as_deref()),
             (Quantity::Temperature, log.temperature.as_ref().and_then(|c| c.flags.as_deref())),
             (Quantity::Salt, salt.and_then(|c| c.flags.as_deref())),
-            // A flag of the whole sample cannot say which value it means. The water is left out of the profile; the
-            // pressure is judged by its own tests, or a bad salinity would cost a depth.
+            // A flag of the whole sample does not say which value it means: it is honoured for all of them.
+            (Quantity::Pressure, of_sample),
             (Quantity::Salt, of_sample),
         ];
         for (quantity, flags) in sources {

@@ -6,7 +6,7 @@ use crate::cast::{Leg, Reason, TareBasis};
 use crate::log::PressureKind;
 use crate::reduction::Reduction;
 use crate::uncertainty::BudgetTerm;
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 use std::io::{self, Write};
 
 /// The deepest depth with its uncertainty, the budget with bars, the ladder, survey orders, assumptions, warnings.
@@ -130,11 +130,12 @@ fn origin(out: &mut dyn Write, r: &Reduction) -> io::Result<()> {
             count(Leg::Up)
         ),
     )?;
-    let mut reasons: BTreeMap<&str, usize> = BTreeMap::new();
+    let mut reasons: BTreeMap<&str, BTreeSet<usize>> = BTreeMap::new();
     for suspect in &r.cast.suspects {
-        *reasons.entry(suspect.reason.name()).or_default() += 1;
+        reasons.entry(suspect.reason.name()).or_default().insert(suspect.sample);
     }
-    let mut named: Vec<String> = reasons.iter().map(|(name, n)| format!("{name} {n}")).collect();
+    let mut named: Vec<String> =
+        reasons.iter().map(|(name, samples)| format!("{name} {}", samples.len())).collect();
     if named.is_empty() {
         named.push("none".to_string());
     }
