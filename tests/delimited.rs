@@ -546,7 +546,8 @@ fn the_caret_stands_under_the_cell() {
 
 #[test]
 fn a_header_without_rows_is_an_error() {
-    assert!(read("time_s,pressure_dbar\n").is_err());
+    let error = read("time_s,pressure_dbar\n").expect_err("no rows").to_string();
+    assert!(error.contains("no row of numbers was found"), "{error}");
 }
 
 #[test]
@@ -588,4 +589,84 @@ fn files_that_cannot_be_read() {
     let logs = seaplumb::log::read(&path.to_string_lossy(), &ReadOptions::default()).expect("a log");
     assert_tiny_dive(&logs[0], "a file");
     assert_eq!(logs[0].source, path.to_string_lossy());
+}
+
+// --- nothing is lost silently --------------------------------------------------------------------
+
+/// A long log with a mistake far from its beginning and its end.
+fn long(lines: usize, at: usize, broken: &str) -> String {
+    let mut text = String::from("time_s,pressure_dbar\n");
+    for i in 0..lines {
+        text += &if i == at { format!("{broken}\n") } else { format!("{i},{}.5\n", i * 2) };
+    }
+    text
+}
+
+#[test]
+fn a_mistake_is_found_wherever_it_stands() {
+    for lines in [5, 100, 40_000] {
+        for at in [0, 1, lines / 2, lines - 2] {
+            for broken in ["7", "7,8,9", "7,x", "*7,8", "time_s,pressure_dbar", "7;8", "\"7,8"] {
+                // The header twice in a row hides nothing.
+                if at == 0 && broken.starts_with("time_s") {
+                    assert_eq!(one(long(lines, at, broken)).len(), lines - 1);
+                    continue;
+                }
+                let error = read(long(lines, at, broken)).expect_err("a mistake");
+                let line = error.place.as_ref().map(|place| place.line);
+                assert_eq!(line, Some(at as u64 + 2), "{broken:?} in row {at} of {lines}: {error}");
+            }
+        }
+        assert_eq!(one(long(lines, usize::MAX, "")).len(), lines);
+    }
+}
+
+#[test]
+fn rows_above_the_header_are_left_out_with_a_warning() {
+    let log = one("0,1.5\n1,2.5\ntime_s,pressure_dbar\n2,3.5\n3,4.5\n");
+    assert_eq!(log.pressure.values, [3.5, 4.5]);
+    assert_eq!(log.warnings[0].key, "rows_above_header");
+    assert!(log.warnings[0].cause.starts_with("2 lines"), "{}", log.warnings[0]);
+}
+
+#[test]
+fn a_log_without_a_header_is_read_from_its_first_row() {
+    let mut text = String::new();
+    for i in 0..30 {
+        text += &if i == 12 { "12\n".to_string() } else { format!("{i} {}\n", i * 2) };
+    }
+    let error = read_with(&text, &options(&["pressure=2:dbar"])).expect_err("a short row");
+    assert_eq!(error.place.as_ref().map(|place| place.line), Some(13), "{error}");
+}
+
+#[test]
+fn preambles_of_all_kinds_are_passed_over() {
+    let rows = "0 1.5 10\n1 2.5 11\n2 3.5 12\n";
+    for preamble in [
+        "Serial 1234\nDate 2026-03-01\nCast 5 of 7\n\ntime_s pressure_dbar temp_degC\n",
+        "* header\n* t = 1 s\n# time_s pressure_dbar temp_degC\n",
+        "pressure sensor 7\n% time_s pressure_dbar temp_degC\n",
+        "calibration: 1 2 3 4 5 6\nthe pressure and temperature of the dive\ntime_s pressure_dbar temp_degC\n",
+        "time pressure temp\n[s] [dbar] [deg C]\n",
+    ] {
+        let log = one(format!("{preamble}{rows}"));
+        assert_eq!(log.pressure.values, [1.5, 2.5, 3.5], "{preamble}");
+        assert_eq!(values(&log.temperature), [10.0, 11.0, 12.0], "{preamble}");
+        assert!(log.warnings.is_empty(), "{preamble}: {:?}", log.warnings);
+    }
+}
+
+#[test]
+fn cells_with_decimal_commas_in_quotes() {
+    let log = one("\"time_s\",\"pressure_dbar\"\n\"0,5\",\"1,25\"\n\"1,5\",\"2,25\"\n");
+    assert_eq!(log.pressure.values, [1.25, 2.25]);
+    assert_eq!(log.format, "delimited text, comma, decimal comma");
+}
+
+#[test]
+fn flags_with_names_of_woce_follow_the_woce_scheme() {
+    let log = one("CTDPRS [dbar],CTDPRS_FLAG_W\n1,2\n2,1\n3,7\n4,5\n");
+    use Flag::*;
+    assert_eq!(log.pressure.flags, Some(vec![Good, NotEvaluated, Good, Missing]));
+    assert!(log.warnings.is_empty(), "{:?}", log.warnings);
 }

@@ -61,10 +61,15 @@ fn near(size: f64, mark: f64) -> bool {
 
 /// The cell, without blanks around it.
 pub(super) fn parse(cell: &[u8], decimal_comma: bool, marks: &Marks) -> Cell {
-    if marks.text(cell) {
-        return Cell::Missing;
-    }
     let parsed = if decimal_comma { with_comma(cell) } else { fast_float2::parse::<f64, _>(cell).ok() };
+    match parsed {
+        // The common case first.
+        Some(value) if marks.texts.is_empty() && value.is_finite() && !marks.number(value) => {
+            return Cell::Value(value);
+        }
+        _ if marks.text(cell) => return Cell::Missing,
+        _ => {}
+    }
     match parsed {
         // In a log with decimal commas a point may be a thousands mark: only a mark of missing
         // values may carry one.

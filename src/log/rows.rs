@@ -27,8 +27,10 @@ pub(super) enum Action {
     Date,
     /// Time of day.
     Clock,
-    /// A flag for this slot.
+    /// A flag of the IOC scheme for this slot.
     Flag(usize),
+    /// A flag of the WOCE scheme for this slot.
+    WoceFlag(usize),
 }
 
 /// The columns of a log, as far as they are used.
@@ -87,7 +89,7 @@ impl Rows {
             numbers: vec![Vec::with_capacity(expected); slots(|a| matches!(a, Action::Number(_)))],
             stamps: Vec::new(),
             start: None,
-            flags: vec![Vec::new(); slots(|a| matches!(a, Action::Flag(_)))],
+            flags: vec![Vec::new(); slots(|a| matches!(a, Action::Flag(_) | Action::WoceFlag(_)))],
             stamps_without_offset: false,
             lines: RowLines::None,
             warnings: Vec::new(),
@@ -110,8 +112,8 @@ impl Reader<'_> {
             }
             let skipped = match text.get(begin) {
                 None | Some(b'\n') => true,
-                Some(b'#' | b'%' | b'!' | b'*' | b'/' | 0x1a) => {
-                    dialect::is_comment(&text[begin..line_end(text, begin)])
+                Some(b'#' | b'%' | b'/' | 0x1a) => {
+                    dialect::is_comment_row(&text[begin..line_end(text, begin)])
                 }
                 Some(_) => false,
             };
@@ -233,8 +235,12 @@ impl Reader<'_> {
                             self.rows.numbers[slot].push(value);
                         }
                         Action::Flag(slot) => {
-                            let flag = self.flag(cell.text).ok_or_else(|| wrong("a flag from 0 to 9"))?;
-                            self.rows.flags[slot].push(flag);
+                            let flag = self.flag(cell.text, &Scheme::Ioc);
+                            self.rows.flags[slot].push(flag.ok_or_else(|| wrong("a flag from 0 to 9"))?);
+                        }
+                        Action::WoceFlag(slot) => {
+                            let flag = self.flag(cell.text, &Scheme::Woce);
+                            self.rows.flags[slot].push(flag.ok_or_else(|| wrong("a WOCE flag from 1 to 9"))?);
                         }
                         Action::Stamp | Action::StartStamp | Action::Date | Action::Clock => {
                             let (value, expected) = self.time(action, cell.text);
@@ -319,10 +325,10 @@ impl Reader<'_> {
         true
     }
 
-    fn flag(&self, cell: &[u8]) -> Option<Flag> {
+    fn flag(&self, cell: &[u8], scheme: &Scheme) -> Option<Flag> {
         match number::parse(cell, self.dialect.decimal_comma, self.marks) {
             Cell::Missing => Some(Flag::NotEvaluated),
-            Cell::Value(value) if value.fract() == 0.0 => Scheme::Ioc.flag(value as i64),
+            Cell::Value(value) if value.fract() == 0.0 => scheme.flag(value as i64),
             _ => None,
         }
     }
