@@ -1,5 +1,6 @@
 //! Delimited text: one sample per line.
 
+use super::cell;
 use super::columns::{self, Picks};
 use super::dialect::{self, Dialect};
 use super::header::{Field, Look};
@@ -64,7 +65,7 @@ fn look_at_values(text: &[u8], dialect: &mut Dialect, marks: &Marks) {
         let mut at = Some(0);
         for (field, settled) in dialect.fields.iter_mut().zip(&mut settled) {
             let Some(from) = at else { break };
-            let cell = dialect::cell(line, from, dialect.separator);
+            let cell = cell::cell(line, from, dialect.separator);
             at = cell.next;
             if number::parse(cell.text, dialect.decimal_comma, marks) == Cell::Missing {
                 continue;

@@ -1,51 +1,11 @@
 //! How a text log is written: separator, decimal mark, where the header stands, where the rows begin.
 
+use super::cell::{Separator, cell};
 use super::columns::is_named;
 use super::header::Field;
 use super::input::decode;
 use super::number::{self, Cell, Marks};
 use super::{ReadOptions, time};
-
-/// What stands between two cells.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub(super) enum Separator {
-    Comma,
-    Semicolon,
-    Tab,
-    /// One or more blanks or tabs.
-    Blanks,
-}
-
-impl Separator {
-    /// In the order of preference where two fit equally well.
-    const ALL: [Separator; 4] = [Separator::Tab, Separator::Semicolon, Separator::Comma, Separator::Blanks];
-
-    pub fn name(self) -> &'static str {
-        match self {
-            Separator::Comma => "comma",
-            Separator::Semicolon => "semicolon",
-            Separator::Tab => "tab",
-            Separator::Blanks => "blanks",
-        }
-    }
-
-    /// Whether a byte ends a cell.
-    #[inline]
-    pub fn ends(self, byte: u8) -> bool {
-        match self {
-            Separator::Comma => byte == b',',
-            Separator::Semicolon => byte == b';',
-            Separator::Tab => byte == b'\t',
-            Separator::Blanks => byte == b' ' || byte == b'\t',
-        }
-    }
-
-    /// Whether a byte is padding around a cell.
-    #[inline]
-    pub fn pads(self, byte: u8) -> bool {
-        byte == b' ' || byte == b'\r' || (byte == b'\t' && self != Separator::Tab)
-    }
-}
 
 /// How a text log is written.
 #[derive(Debug)]
@@ -360,63 +320,4 @@ fn header_cells(line: &[u8], separator: Separator, width: usize) -> Vec<String> 
         }
     }
     cells
-}
-
-/// One cell of a line.
-pub(super) struct CellAt<'a> {
-    /// The cell without blanks and quotes around it.
-    pub text: &'a [u8],
-    /// Where it stands in the line.
-    pub start: usize,
-    /// Where the next cell begins; none at the end of the line.
-    pub next: Option<usize>,
-    /// A quote that is not closed in this line.
-    pub open_quote: bool,
-}
-
-/// The cell that begins at `from`. A quote counts only at the beginning of a cell and must close in
-/// its own line: a stray one cannot swallow the rows below it.
-pub(super) fn cell(line: &[u8], from: usize, separator: Separator) -> CellAt<'_> {
-    let mut start = from;
-    while start < line.len() && separator.pads(line[start]) {
-        start += 1;
-    }
-    let mut end = start;
-    let mut quoted = None;
-    let mut open_quote = false;
-    if line.get(start) == Some(&b'"') {
-        match closing_quote(line, start + 1) {
-            Some(close) => {
-                quoted = Some(&line[start + 1..close]);
-                end = close + 1;
-            }
-            None => open_quote = true,
-        }
-    }
-    while end < line.len() && !separator.ends(line[end]) {
-        end += 1;
-    }
-    let text = match quoted {
-        // Whatever stands between the closing quote and the separator belongs to a broken cell.
-        Some(inner) if line[start + inner.len() + 2..end].trim_ascii().is_empty() => inner.trim_ascii(),
-        _ => line[start..end].trim_ascii(),
-    };
-    let mut next = end;
-    if separator == Separator::Blanks {
-        while next < line.len() && separator.pads(line[next]) {
-            next += 1;
-        }
-        return CellAt { text, start, next: (next < line.len()).then_some(next), open_quote };
-    }
-    CellAt { text, start, next: (end < line.len()).then_some(end + 1), open_quote }
-}
-
-fn closing_quote(line: &[u8], mut at: usize) -> Option<usize> {
-    loop {
-        at += line.get(at..)?.iter().position(|&b| b == b'"')?;
-        if line.get(at + 1) != Some(&b'"') {
-            return Some(at);
-        }
-        at += 2;
-    }
 }

@@ -4,12 +4,13 @@
 //! which also knows quotes, decimal commas and missing marks, and can say what is wrong and where.
 
 use super::axis::MISSING;
-use super::dialect::{self, Dialect, Separator};
+use super::cell::{self, Separator};
+use super::dialect::{self, Dialect};
 use super::flags::Scheme;
-use super::input::decode;
+use super::mistake::Problem;
 use super::number::{self, Cell, Marks};
 use super::time::{self, Nanos, StampParser};
-use super::{Flag, LogError, Place, RowLines};
+use super::{Flag, LogError, RowLines};
 use crate::warning::Warning;
 
 /// What is done with the cells of a column.
@@ -52,15 +53,6 @@ pub(super) struct Rows {
     pub lines: RowLines,
     /// What was noticed.
     pub warnings: Vec<Warning>,
-}
-
-/// Why a row could not be read; positions count bytes from the beginning of its line.
-#[derive(Debug)]
-enum Problem {
-    TooFew { found: usize },
-    TooMany { at: usize },
-    OpenQuote { at: usize },
-    Cell { column: usize, start: usize, length: usize, last: bool, expected: &'static str },
 }
 
 struct Reader<'a> {
@@ -140,7 +132,7 @@ impl Reader<'_> {
                         Problem::TooFew { .. } | Problem::OpenQuote { .. } | Problem::Cell { last: true, .. }
                     );
                     if end < text.len() || !cut || self.rows.count == 0 {
-                        return Err(self.error(file, line, &text[at..end], &problem));
+                        return Err(problem.error(file, self.dialect, line, &text[at..end]));
                     }
                     self.rows.count += 1;
                     self.leave_out_last(line);
@@ -211,7 +203,7 @@ impl Reader<'_> {
                 Some(end) => end,
                 None => {
                     let line = &text[start..line_end(text, at)];
-                    let cell = dialect::cell(line, at - start, separator);
+                    let cell = cell::cell(line, at - start, separator);
                     if cell.open_quote {
                         return Err(Problem::OpenQuote { at: cell.start });
                     }
@@ -349,48 +341,6 @@ impl Reader<'_> {
                 (stamp.map(|stamp| stamp.nanos), "a time such as 2026-03-01T10:20:30Z (ISO 8601)")
             }
         }
-    }
-
-    fn error(&self, file: &str, line: u64, bytes: &[u8], problem: &Problem) -> LogError {
-        let columns = self.actions.len();
-        let named = if self.dialect.has_header { "the header names" } else { "the other rows have" };
-        let (error, span) = match problem {
-            Problem::TooFew { found } => (
-                LogError::new(file, format!("this row has {found} of the {columns} cells that {named}"))
-                    .remedy("complete the row, or take it out"),
-                None,
-            ),
-            Problem::TooMany { at } => (
-                LogError::new(file, format!("this row has more than the {columns} cells that {named}"))
-                    .remedy(format!(
-                        "take the surplus out; a cell that holds a {} must stand in quotes",
-                        self.dialect.separator.name()
-                    )),
-                Some((*at, bytes.len() - at)),
-            ),
-            Problem::OpenQuote { at } => (
-                LogError::new(file, "this quote is not closed in its line")
-                    .remedy("close it, or take it out"),
-                Some((*at, 1)),
-            ),
-            Problem::Cell { column, start, length, expected, .. } => {
-                let field = &self.dialect.fields[*column];
-                let found = decode(&bytes[*start..(*start + *length).min(bytes.len())]).into_owned();
-                let quoted = if found.contains(' ') { format!("'{found}'") } else { found.clone() };
-                (
-                    LogError::new(
-                        file,
-                        format!("'{found}' in the column '{}' is not {expected}", field.label),
-                    )
-                    .remedy(format!("correct it; if it marks a missing value, type --missing {quoted}")),
-                    Some((*start, *length)),
-                )
-            }
-        };
-        error.at(match span {
-            Some((start, length)) => Place::span(line, bytes, start, length),
-            None => Place::line(line, &decode(bytes)),
-        })
     }
 }
 
