@@ -192,6 +192,10 @@ fn missing_values_are_nan() {
     let options = ReadOptions { columns: vec![], missing: vec!["-88".into(), "bad".into()] };
     let log = &read_with("pressure_dbar\n1\n-88.0\nbad\n", &options).expect("marks are known")[0];
     assert!(log.pressure.values[1].is_nan() && log.pressure.values[2].is_nan());
+    let options = ReadOptions { columns: vec![], missing: vec!["-99,5".into()] };
+    let log = &read_with("pressure_dbar;qc\n1,5;1\n-99,5;1\n-999;1\n", &options).expect("marks are known")[0];
+    assert_eq!(log.pressure.values[0], 1.5);
+    assert!(log.pressure.values[1].is_nan() && log.pressure.values[2].is_nan());
 }
 
 #[test]

@@ -184,8 +184,10 @@ impl Reader<'_> {
             }
             let mut end = None;
             match action {
-                Action::Number(slot) if !self.dialect.decimal_comma => {
-                    if let Some((value, after)) = self.plain_number(at) {
+                Action::Number(slot) => {
+                    let comma = self.dialect.decimal_comma;
+                    let plain = if comma { self.comma_number(at) } else { self.plain_number(at) };
+                    if let Some((value, after)) = plain {
                         self.rows.numbers[slot].push(value);
                         end = Some(after);
                     }
@@ -301,6 +303,20 @@ impl Reader<'_> {
         // A blank inside a cell of a comma file: only what follows it tells.
         let clean = clean && (self.dialect.separator == Separator::Blanks || self.only_padding(end));
         (clean && value.is_finite() && !self.marks.number(value)).then_some((value, end))
+    }
+
+    /// The same with a decimal comma.
+    fn comma_number(&self, at: usize) -> Option<(f64, usize)> {
+        let separator = self.dialect.separator;
+        if separator == Separator::Comma {
+            return None;
+        }
+        let ends = |&byte: &u8| matches!(byte, b'\n' | b'\r' | b' ') || separator.ends(byte);
+        let rest = self.text.get(at..)?;
+        let end = at + rest.iter().take(number::LONGEST).position(ends)?;
+        let value = number::with_comma(&self.text[at..end])?;
+        let clean = separator == Separator::Blanks || self.only_padding(end);
+        (clean && value.is_finite() && !self.marks.is_marked(value)).then_some((value, end))
     }
 
     #[inline]
