@@ -263,6 +263,16 @@ fn elapsed_times_and_clocks() {
     }
 }
 
+#[test]
+fn a_stamp_between_blanks_is_one_time() {
+    let log = one("pressure_dbar time temp_degC\n1 2026-03-01 10:00:00 5\n2 2026-03-01 10:00:01.5 6\n");
+    assert_eq!(log.pressure.values, [1.0, 2.0]);
+    assert_eq!(values(&log.temperature), [5.0, 6.0]);
+    assert_eq!(log.time.as_ref().expect("a time").elapsed_s, [0.0, 1.5]);
+    assert_eq!(log.start, "2026-03-01T10:00:00Z".parse().ok());
+    assert!(log.unused.is_empty());
+}
+
 // --- the user's word -----------------------------------------------------------------------------
 
 #[test]

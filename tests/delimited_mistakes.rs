@@ -218,6 +218,14 @@ const MISTAKES: &[Mistake] = &[
         problem: &["'1.234'", "not a number"],
         remedy: &["correct it"],
     },
+    Mistake {
+        text: "time,pressure_dbar\n2026-03-01,1\n2026-03-01,2\n",
+        columns: &[],
+        line: None,
+        column: None,
+        problem: &["'time' holds dates without a time of day"],
+        remedy: &["--column time=NAME"],
+    },
 ];
 
 #[test]

@@ -155,6 +155,14 @@ impl Plan {
                     actions[pick.index] = Action::Clock;
                     time = TimePlan::Absolute { dated: picks.date.is_some() };
                 }
+                (Role::Time, Look::Date) if fields[pick.index].unit.is_none() && !pick.chosen => {
+                    let label = &fields[pick.index].label;
+                    return Err(LogError::new(
+                        file,
+                        format!("the column '{label}' holds dates without a time of day"),
+                    )
+                    .remedy("name the column of times, for example --column time=NAME:s"));
+                }
                 (Role::Time, Look::Date | Look::Number) => {
                     let (unit, since) = columns::time_unit(file, "column", fields, pick)?;
                     actions[pick.index] = Action::Number(slots);

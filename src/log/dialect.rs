@@ -95,6 +95,9 @@ pub(super) fn detect(text: &[u8], options: &ReadOptions, marks: &Marks) -> Optio
         }
     }
     let next = lines.get(next)?;
+    if separator == Separator::Blanks && fields.len() + 1 == width {
+        part_stamps(&mut fields, lines[top..].iter().find(|line| line.start >= next.start)?.bytes);
+    }
     Some(Dialect {
         separator,
         decimal_comma,
@@ -219,6 +222,22 @@ fn score(sample: &[&Line<'_>], separator: Separator, decimal_comma: bool, marks:
         .filter(|look| look.cells == width)
         .fold((0, 0), |sum, look| (sum.0 + look.numbers, sum.1 + look.cells - look.empty));
     Some(Score { lines: count(width), share: numbers as f64 / cells.max(1) as f64, width })
+}
+
+/// Between blanks, a stamp `2026-03-01 10:20:30` stands in two cells under one name: the date gets
+/// a column of its own.
+fn part_stamps(fields: &mut Vec<Field>, row: &[u8]) {
+    let text = decode(row);
+    let cells: Vec<&[u8]> = text.split_ascii_whitespace().map(str::as_bytes).collect();
+    let mut stamps = time::StampParser::default();
+    let parted = |i: usize, stamps: &mut time::StampParser| {
+        let (date, clock) = (cells.get(i), cells.get(i + 1));
+        date.is_some_and(|cell| stamps.date(cell).is_some())
+            && clock.is_some_and(|cell| cell.contains(&b':') && time::clock(cell).is_some())
+    };
+    if let Some(at) = (0..fields.len()).find(|&i| fields[i].is_known() && parted(i, &mut stamps)) {
+        fields.insert(at, Field::from_cell("date"));
+    }
 }
 
 /// A question about a line.
