@@ -1,29 +1,9 @@
-//! Delimited text logs: every dialect gives the same columns, every mistake its own message.
+//! Delimited text logs: every dialect gives the same columns.
 
-use seaplumb::log::{Flag, Log, LogError, PressureKind, ReadOptions, RowLines, read_bytes};
+mod support;
 
-fn options(columns: &[&str]) -> ReadOptions {
-    ReadOptions { columns: columns.iter().map(|c| c.parse().expect("a choice")).collect(), missing: vec![] }
-}
-
-fn read(text: impl AsRef<[u8]>) -> Result<Vec<Log>, LogError> {
-    read_with(text, &options(&[]))
-}
-
-fn read_with(text: impl AsRef<[u8]>, options: &ReadOptions) -> Result<Vec<Log>, LogError> {
-    read_bytes("dive.csv", text.as_ref().to_vec(), options)
-}
-
-fn one(text: impl AsRef<[u8]>) -> Log {
-    let text = text.as_ref();
-    let mut logs = read(text).unwrap_or_else(|e| panic!("{e}\nin\n{}", String::from_utf8_lossy(text)));
-    assert_eq!(logs.len(), 1);
-    logs.remove(0)
-}
-
-fn values(channel: &Option<seaplumb::log::Channel>) -> &[f64] {
-    channel.as_ref().map_or(&[], |channel| &channel.values)
-}
+use seaplumb::log::{Flag, Log, PressureKind, ReadOptions, RowLines};
+use support::logs::{one, options, read, read_with, values};
 
 /// The dive that every dialect below writes down.
 fn assert_tiny_dive(log: &Log, what: &str) {
@@ -212,6 +192,10 @@ fn missing_values_are_nan() {
     let options = ReadOptions { columns: vec![], missing: vec!["-88".into(), "bad".into()] };
     let log = &read_with("pressure_dbar\n1\n-88.0\nbad\n", &options).expect("marks are known")[0];
     assert!(log.pressure.values[1].is_nan() && log.pressure.values[2].is_nan());
+    let options = ReadOptions { columns: vec![], missing: vec!["-99,5".into()] };
+    let log = &read_with("pressure_dbar;qc\n1,5;1\n-99,5;1\n-999;1\n", &options).expect("marks are known")[0];
+    assert_eq!(log.pressure.values[0], 1.5);
+    assert!(log.pressure.values[1].is_nan() && log.pressure.values[2].is_nan());
 }
 
 #[test]
@@ -279,6 +263,16 @@ fn elapsed_times_and_clocks() {
     }
 }
 
+#[test]
+fn a_stamp_between_blanks_is_one_time() {
+    let log = one("pressure_dbar time temp_degC\n1 2026-03-01 10:00:00 5\n2 2026-03-01 10:00:01.5 6\n");
+    assert_eq!(log.pressure.values, [1.0, 2.0]);
+    assert_eq!(values(&log.temperature), [5.0, 6.0]);
+    assert_eq!(log.time.as_ref().expect("a time").elapsed_s, [0.0, 1.5]);
+    assert_eq!(log.start, "2026-03-01T10:00:00Z".parse().ok());
+    assert!(log.unused.is_empty());
+}
+
 // --- the user's word -----------------------------------------------------------------------------
 
 #[test]
@@ -298,273 +292,6 @@ fn a_log_without_a_header_is_read_by_numbers() {
     assert_eq!(log.pressure.values, [0.5, 10.25]);
     assert_eq!(log.time.as_ref().expect("a time").elapsed_s, [0.0, 1.0]);
     assert_eq!(log.lines, RowLines::Contiguous { first: 1 });
-}
-
-// --- mistakes ------------------------------------------------------------------------------------
-
-struct Mistake {
-    text: &'static str,
-    columns: &'static [&'static str],
-    line: Option<u64>,
-    column: Option<usize>,
-    problem: &'static [&'static str],
-    remedy: &'static [&'static str],
-}
-
-const MISTAKES: &[Mistake] = &[
-    Mistake { text: "", columns: &[], line: None, column: None, problem: &["empty"], remedy: &["copied"] },
-    Mistake {
-        text: " \n\n",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["empty"],
-        remedy: &["copied"],
-    },
-    Mistake {
-        text: "just some words\nand more of them\n",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["no row of numbers"],
-        remedy: &["one sample per line"],
-    },
-    Mistake {
-        text: "PK\x03\x04rest",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["zip archive"],
-        remedy: &["unpack"],
-    },
-    Mistake {
-        text: "\0\x01\x02\x03binary\0\0",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["neither text nor NetCDF"],
-        remedy: &["delimited text"],
-    },
-    Mistake {
-        text: "time_s,pressure\n0,1\n1,2\n",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["unit of the pressure column 'pressure' cannot be told"],
-        remedy: &["dbar, bar, mbar, hPa, kPa, MPa, Pa, psi, atm", "--column pressure=pressure:dbar"],
-    },
-    Mistake {
-        text: "pressure [counts]\n1\n2\n",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["'counts' is not a known unit of pressure"],
-        remedy: &["--column pressure=pressure:dbar"],
-    },
-    Mistake {
-        text: "pressure_dbar,cond\n1,2\n2,3\n",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["unit of the conductivity column 'cond'"],
-        remedy: &["mS/cm, S/m, uS/cm", "--column conductivity=cond:mS/cm"],
-    },
-    Mistake {
-        text: "pressure_dbar,temp\n1,2\n2,3\n",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["unit of the temperature column 'temp'"],
-        remedy: &["degC, IPTS-68, K, degF", "--column temperature=temp:degC"],
-    },
-    Mistake {
-        text: "time,pressure_dbar\n1,2\n2,3\n",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["unit of the time column 'time'"],
-        remedy: &["s, min, h, day", "--column time=time:s"],
-    },
-    Mistake {
-        text: "pressure_dbar,salinity [g/kg]\n1,2\n2,3\n",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["'g/kg' is not a known unit of salinity"],
-        remedy: &["--column salinity=salinity:1"],
-    },
-    Mistake {
-        text: "0,0.5,15.5\n1,10.25,14.25\n",
-        columns: &[],
-        line: Some(1),
-        column: None,
-        problem: &["no header line names the 3 columns"],
-        remedy: &["--column pressure=2:dbar"],
-    },
-    Mistake {
-        text: "a;b\n1;2\n2;3\n",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["no column looks like pressure", "'a', 'b'"],
-        remedy: &["--column pressure=a:dbar"],
-    },
-    Mistake {
-        text: "prs [dbar],pressure [MPa]\n1,2\n2,3\n",
-        columns: &[],
-        line: None,
-        column: None,
-        problem: &["2 columns look like pressure", "'prs [dbar]', 'pressure [MPa]'"],
-        remedy: &["--column pressure=prs"],
-    },
-    Mistake {
-        text: "prs,tmp\n1,2\n2,3\n",
-        columns: &["pressure=press:dbar"],
-        line: None,
-        column: None,
-        problem: &["'press'", "no such column"],
-        remedy: &["'prs', 'tmp'"],
-    },
-    Mistake {
-        text: "time_s,pressure_dbar\n0,1\n1,x2\n2,3\n",
-        columns: &[],
-        line: Some(3),
-        column: Some(3),
-        problem: &["'x2' in the column 'pressure_dbar' is not a number"],
-        remedy: &["--missing x2"],
-    },
-    Mistake {
-        text: "time_s,pressure_dbar\n0,abc\n1,2\n2,3\n",
-        columns: &[],
-        line: Some(2),
-        column: Some(3),
-        problem: &["'abc'"],
-        remedy: &["--missing abc"],
-    },
-    Mistake {
-        text: "time_s,pressure_dbar\n0,1\n1,inf\n2,3\n",
-        columns: &[],
-        line: Some(3),
-        column: Some(3),
-        problem: &["'inf'", "not a finite number"],
-        remedy: &["--missing inf"],
-    },
-    Mistake {
-        text: "time_s,pressure_dbar\n0,1\n1,1e400\n2,3\n",
-        columns: &[],
-        line: Some(3),
-        column: Some(3),
-        problem: &["'1e400'", "not a finite number"],
-        remedy: &["correct it"],
-    },
-    Mistake {
-        text: "time_s,pressure_dbar,note\n0,1,a\n1\n2,3,b\n",
-        columns: &[],
-        line: Some(3),
-        column: None,
-        problem: &["1 of the 3 cells that the header names"],
-        remedy: &["complete the row"],
-    },
-    Mistake {
-        text: "time_s,pressure_dbar\n0,1\n1,2,7\n2,3\n",
-        columns: &[],
-        line: Some(3),
-        column: Some(5),
-        problem: &["more than the 2 cells that the header names"],
-        remedy: &["comma", "quotes"],
-    },
-    Mistake {
-        text: "time_s,pressure_dbar,note\n0,1,\"a\n1,2,b\n2,3,c\n",
-        columns: &[],
-        line: Some(2),
-        column: Some(5),
-        problem: &["quote is not closed"],
-        remedy: &["close it"],
-    },
-    Mistake {
-        text: "time,pressure_dbar\n2026-03-01T10:00:00Z,1\n2026-02-30T10:00:01Z,2\n2026-03-01T10:00:02Z,2\n",
-        columns: &[],
-        line: Some(3),
-        column: Some(1),
-        problem: &["'2026-02-30T10:00:01Z'", "ISO 8601"],
-        remedy: &["correct it"],
-    },
-    Mistake {
-        text: "time,pressure_dbar\n01/03/2026 10:00:00,1\n01/03/2026 10:00:01,2\n",
-        columns: &[],
-        line: Some(2),
-        column: Some(1),
-        problem: &["'01/03/2026 10:00:00' in the column 'time'", "ISO 8601"],
-        remedy: &["correct it"],
-    },
-    Mistake {
-        text: "pressure_dbar,qc\n1,1\n2,12\n3,1\n",
-        columns: &[],
-        line: Some(3),
-        column: Some(3),
-        problem: &["'12' in the column 'qc' is not a flag from 0 to 9"],
-        remedy: &["correct it"],
-    },
-    Mistake {
-        text: "time_s;pressure_dbar\n0,5;1,5\n1,5;1.234\n2,5;2,5\n",
-        columns: &[],
-        line: Some(3),
-        column: Some(5),
-        problem: &["'1.234'", "not a number"],
-        remedy: &["correct it"],
-    },
-];
-
-#[test]
-fn every_mistake_has_its_message() {
-    for mistake in MISTAKES {
-        let Err(error) = read_with(mistake.text, &options(mistake.columns)) else {
-            panic!("{:?} was read", mistake.text);
-        };
-        assert_eq!(error.file, "dive.csv");
-        let place = error.place.as_deref();
-        assert_eq!(place.map(|p| p.line), mistake.line, "{error}");
-        assert_eq!(place.and_then(|p| p.column), mistake.column, "{error}");
-        for part in mistake.problem {
-            assert!(error.problem.contains(part), "no {part:?} in: {error}");
-        }
-        for part in mistake.remedy {
-            assert!(error.remedy.as_deref().unwrap_or("").contains(part), "no {part:?} in: {error}");
-        }
-    }
-}
-
-#[test]
-fn the_caret_stands_under_the_cell() {
-    let error =
-        read("time_s,pressure_dbar,depth\n0,1,2\n°,12x,4\n1,1,1\n").expect_err("a bad cell").to_string();
-    // The first bad cell of the line is the time.
-    assert!(error.starts_with("dive.csv:3:1: '°' in the column 'time_s' is not a number"), "{error}");
-    let error = read("note,pressure_dbar\n°,1\n°,12x\n°,3\n").expect_err("a bad cell").to_string();
-    assert!(error.contains("dive.csv:3:3: ") && error.contains("\n  | °,12x\n  |   ^^^\n"), "{error}");
-}
-
-#[test]
-fn a_header_without_rows_is_an_error() {
-    assert!(read("time_s,pressure_dbar\n").is_err());
-}
-
-#[test]
-fn a_last_row_that_was_cut_off_is_left_out_with_a_warning() {
-    for tail in ["1", "1,", "1,-", "\"1"] {
-        let log = one(format!("time_s,pressure_dbar\n0,1\n0.5,2\n{tail}"));
-        assert_eq!(log.pressure.values, [1.0, 2.0], "{tail}");
-        assert_eq!(log.time.as_ref().expect("a time").elapsed_s, [0.0, 0.5], "{tail}");
-        assert_eq!(log.lines, RowLines::Contiguous { first: 2 }, "{tail}");
-        assert_eq!(log.warnings[0].key, "last_row_incomplete", "{tail}");
-        assert!(log.warnings[0].cause.contains("(4)"), "{}", log.warnings[0]);
-    }
-    // With a line end the same row is a mistake.
-    assert!(read("time_s,pressure_dbar\n0,1\n0.5,2\n1\n").is_err());
-    // A missing value at the end of the last line is no cut where the lines above end so, too.
-    assert_eq!(one("pressure_dbar,temp_degC\n1,\n2,").len(), 2);
-    // Only the last cell can be cut.
-    assert!(read("time_s,pressure_dbar\n0,1\n0.5,2\nx,3").is_err());
 }
 
 // --- files ---------------------------------------------------------------------------------------

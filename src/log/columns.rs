@@ -17,7 +17,8 @@ pub(super) struct Pick {
     unit_text: Option<String>,
     unit_how: &'static str,
     how: String,
-    chosen: bool,
+    /// Settled by the user.
+    pub chosen: bool,
 }
 
 /// The columns of a log, settled.

@@ -1,10 +1,12 @@
 //! Delimited text: one sample per line.
 
+use super::cell;
 use super::columns::{self, Picks};
 use super::dialect::{self, Dialect};
 use super::header::{Field, Look};
 use super::input::{Input, decode};
 use super::number::{self, Cell, Marks};
+use super::role::compact;
 use super::rows::{Action, Rows};
 use super::unit::Unit;
 use super::{Flag, Log, LogError, Place, ReadOptions, Role, TimeAxis, axis, position, time};
@@ -33,6 +35,15 @@ pub(super) fn read(input: &Input, options: &ReadOptions) -> Result<Vec<Log>, Log
         Err(error) => return Err(error),
     };
     let mut warnings = Vec::new();
+    if dialect.rows_above > 0 {
+        let cause =
+            format!("{} lines above the header look like rows; they were left out", dialect.rows_above);
+        warnings.push(Warning::new(
+            "rows_above_header",
+            cause,
+            "move the header above them if they belong to the log",
+        ));
+    }
     let plan = Plan::new(file, &dialect.fields, picks, &mut warnings)?;
     let rows = Rows::read(file, text, &dialect, &plan.actions, &marks)?;
     if rows.count == 0 {
@@ -48,13 +59,13 @@ fn look_at_values(text: &[u8], dialect: &mut Dialect, marks: &Marks) {
     let mut stamps = time::StampParser::default();
     let mut settled = vec![false; dialect.fields.len()];
     for line in text[dialect.first_byte..].split(|&b| b == b'\n').take(ROWS) {
-        if dialect::is_comment(line.trim_ascii()) {
+        if dialect::is_comment_row(line.trim_ascii()) {
             continue;
         }
         let mut at = Some(0);
         for (field, settled) in dialect.fields.iter_mut().zip(&mut settled) {
             let Some(from) = at else { break };
-            let cell = dialect::cell(line, from, dialect.separator);
+            let cell = cell::cell(line, from, dialect.separator);
             at = cell.next;
             if number::parse(cell.text, dialect.decimal_comma, marks) == Cell::Missing {
                 continue;
@@ -144,6 +155,14 @@ impl Plan {
                     actions[pick.index] = Action::Clock;
                     time = TimePlan::Absolute { dated: picks.date.is_some() };
                 }
+                (Role::Time, Look::Date) if fields[pick.index].unit.is_none() && !pick.chosen => {
+                    let label = &fields[pick.index].label;
+                    return Err(LogError::new(
+                        file,
+                        format!("the column '{label}' holds dates without a time of day"),
+                    )
+                    .remedy("name the column of times, for example --column time=NAME:s"));
+                }
                 (Role::Time, Look::Date | Look::Number) => {
                     let (unit, since) = columns::time_unit(file, "column", fields, pick)?;
                     actions[pick.index] = Action::Number(slots);
@@ -168,7 +187,9 @@ impl Plan {
             actions[start] = Action::StartStamp;
         }
         for &(role, index) in &picks.flags_of {
-            actions[index] = Action::Flag(flags.len());
+            let slot = flags.len();
+            actions[index] =
+                if is_woce_flag(&fields[index]) { Action::WoceFlag(slot) } else { Action::Flag(slot) };
             flags.push((role, index));
         }
         Ok(Self { picks, actions, numbers, flags, time })
@@ -183,8 +204,10 @@ impl Plan {
     ) -> Result<Log, LogError> {
         let fields = &dialect.fields;
         warnings.append(&mut rows.warnings);
-        if !self.flags.is_empty() {
-            let labels: Vec<_> = self.flags.iter().map(|(_, i)| format!("'{}'", fields[*i].label)).collect();
+        let assumed =
+            self.flags.iter().map(|(_, index)| &fields[*index]).filter(|field| !is_woce_flag(field));
+        let labels: Vec<_> = assumed.map(|field| format!("'{}'", field.label)).collect();
+        if !labels.is_empty() {
             warnings.push(Warning::new(
                 "flag_scheme_assumed",
                 format!(
@@ -261,4 +284,9 @@ impl Plan {
             warnings,
         })
     }
+}
+
+/// `CTDPRS_FLAG_W` and its like are names of the WOCE scheme.
+fn is_woce_flag(field: &Field) -> bool {
+    compact(&field.name).ends_with("flagw")
 }

@@ -1,51 +1,11 @@
 //! How a text log is written: separator, decimal mark, where the header stands, where the rows begin.
 
+use super::cell::{Separator, cell};
 use super::columns::is_named;
-use super::header::{self, Field};
+use super::header::Field;
 use super::input::decode;
 use super::number::{self, Cell, Marks};
 use super::{ReadOptions, time};
-
-/// What stands between two cells.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub(super) enum Separator {
-    Comma,
-    Semicolon,
-    Tab,
-    /// One or more blanks or tabs.
-    Blanks,
-}
-
-impl Separator {
-    /// In the order of preference where two fit equally well.
-    const ALL: [Separator; 4] = [Separator::Tab, Separator::Semicolon, Separator::Comma, Separator::Blanks];
-
-    pub fn name(self) -> &'static str {
-        match self {
-            Separator::Comma => "comma",
-            Separator::Semicolon => "semicolon",
-            Separator::Tab => "tab",
-            Separator::Blanks => "blanks",
-        }
-    }
-
-    /// Whether a byte ends a cell.
-    #[inline]
-    pub fn ends(self, byte: u8) -> bool {
-        match self {
-            Separator::Comma => byte == b',',
-            Separator::Semicolon => byte == b';',
-            Separator::Tab => byte == b'\t',
-            Separator::Blanks => byte == b' ' || byte == b'\t',
-        }
-    }
-
-    /// Whether a byte is padding around a cell.
-    #[inline]
-    pub fn pads(self, byte: u8) -> bool {
-        byte == b' ' || byte == b'\r' || (byte == b'\t' && self != Separator::Tab)
-    }
-}
 
 /// How a text log is written.
 #[derive(Debug)]
@@ -58,6 +18,8 @@ pub(super) struct Dialect {
     /// Line of the first row, from 1, and where it begins.
     pub first_line: u64,
     pub first_byte: usize,
+    /// Lines above the header that look like rows of the same log.
+    pub rows_above: usize,
 }
 
 /// As much of a log as is looked at to find out how it is written.
@@ -82,7 +44,6 @@ pub(super) fn detect(text: &[u8], options: &ReadOptions, marks: &Marks) -> Optio
     let (separator, decimal_comma, width) = Separator::ALL
         .into_iter()
         .flat_map(|separator| [false, true].map(|comma| (separator, comma)))
-        .filter(|(separator, comma)| !(*separator == Separator::Comma && *comma))
         .filter_map(|(separator, comma)| {
             score(sample, separator, comma, marks).map(|score| (score, separator, comma))
         })
@@ -96,17 +57,29 @@ pub(super) fn detect(text: &[u8], options: &ReadOptions, marks: &Marks) -> Optio
         let found = look(line.bytes, separator, decimal_comma, marks);
         found.cells == width && found.numbers > 0 && found.fits()
     };
-    // From the end of the window upwards, as long as there are rows without a break.
-    let last = rows.iter().rposition(|line| is_row(line))?;
-    let top = rows[..=last].iter().rposition(|line| !is_row(line)).map_or(0, |i| i + 1);
-    let top = lines.iter().position(|line| line.number == rows[top].number)?;
-
-    let header = find_header(&lines[..top], separator, width, decimal_comma, options, marks);
+    let top = lines.iter().position(|line| !line.comment && is_row(line))?;
+    let full = |line: &Line<'_>| {
+        !line.comment && is_row(line) && {
+            let found = look(line.bytes, separator, decimal_comma, marks);
+            found.numbers + found.empty == width
+        }
+    };
+    let header = find_header(&lines, top, separator, width, options, (&is_row, &full));
     let Some((at, mut fields)) = header else {
         let fields = (1..=width).map(|i| Field::from_cell(&i.to_string())).collect();
         let (first_line, first_byte) = (lines[top].number, lines[top].start);
-        return Some(Dialect { separator, decimal_comma, fields, has_header: false, first_line, first_byte });
+        let has_header = false;
+        return Some(Dialect {
+            separator,
+            decimal_comma,
+            fields,
+            has_header,
+            first_line,
+            first_byte,
+            rows_above: 0,
+        });
     };
+    let rows_above = lines[..at].iter().filter(|line| full(line)).count();
     let mut next = at + 1;
     if let Some(units) = lines.get(next) {
         let cells = header_cells(strip_comment(units.bytes), separator, fields.len());
@@ -122,11 +95,15 @@ pub(super) fn detect(text: &[u8], options: &ReadOptions, marks: &Marks) -> Optio
         }
     }
     let next = lines.get(next)?;
+    if separator == Separator::Blanks && fields.len() + 1 == width {
+        part_stamps(&mut fields, lines[top..].iter().find(|line| line.start >= next.start)?.bytes);
+    }
     Some(Dialect {
         separator,
         decimal_comma,
         fields,
         has_header: true,
+        rows_above,
         first_line: next.number,
         first_byte: next.start,
     })
@@ -160,11 +137,15 @@ fn trimmed_end(line: &[u8]) -> &[u8] {
     line.strip_suffix(b"\r").unwrap_or(line)
 }
 
-/// Marks that begin a comment line in the logs of the trade; none can begin a number or a date.
-pub(super) fn is_comment(trimmed: &[u8]) -> bool {
-    matches!(trimmed.first(), Some(b'#' | b'%' | b'!' | b'*'))
-        || trimmed.starts_with(b"//")
-        || trimmed == b"\x1a"
+/// Marks that begin a comment line above the rows; none can begin a number or a date.
+fn is_comment(trimmed: &[u8]) -> bool {
+    matches!(trimmed.first(), Some(b'!' | b'*')) || is_comment_row(trimmed)
+}
+
+/// Marks that begin a comment line among the rows. Others may mark a row as doubtful, and a row is
+/// never left out silently.
+pub(super) fn is_comment_row(trimmed: &[u8]) -> bool {
+    matches!(trimmed.first(), Some(b'#' | b'%')) || trimmed.starts_with(b"//") || trimmed == b"\x1a"
 }
 
 fn strip_comment(line: &[u8]) -> &[u8] {
@@ -243,42 +224,73 @@ fn score(sample: &[&Line<'_>], separator: Separator, decimal_comma: bool, marks:
     Some(Score { lines: count(width), share: numbers as f64 / cells.max(1) as f64, width })
 }
 
-/// The header above the rows: the line with the most names that are known, the lowest such line
-/// first; else the line directly above the rows when it has one name per column.
+/// Between blanks, a stamp `2026-03-01 10:20:30` stands in two cells under one name: the date gets
+/// a column of its own.
+fn part_stamps(fields: &mut Vec<Field>, row: &[u8]) {
+    let text = decode(row);
+    let cells: Vec<&[u8]> = text.split_ascii_whitespace().map(str::as_bytes).collect();
+    let mut stamps = time::StampParser::default();
+    let parted = |i: usize, stamps: &mut time::StampParser| {
+        let (date, clock) = (cells.get(i), cells.get(i + 1));
+        date.is_some_and(|cell| stamps.date(cell).is_some())
+            && clock.is_some_and(|cell| cell.contains(&b':') && time::clock(cell).is_some())
+    };
+    if let Some(at) = (0..fields.len()).find(|&i| fields[i].is_known() && parted(i, &mut stamps)) {
+        fields.insert(at, Field::from_cell("date"));
+    }
+}
+
+/// A question about a line.
+type Test<'a> = &'a dyn Fn(&Line<'_>) -> bool;
+
+/// Finds the header among all lines; `top` is the first that looks like a row.
+///
+/// It is the line with the most names that are known, the lowest of equals. The search ends where
+/// rows follow such a line: a second header further down is a mistake in the rows, not the header.
+/// Without a known name, the line directly above the rows is the header when it has one name per
+/// column.
 fn find_header(
-    above: &[Line<'_>],
+    lines: &[Line<'_>],
+    top: usize,
     separator: Separator,
     width: usize,
-    decimal_comma: bool,
     options: &ReadOptions,
-    marks: &Marks,
+    (is_row, is_full): (Test<'_>, Test<'_>),
 ) -> Option<(usize, Vec<Field>)> {
-    let mut best: Option<(usize, usize, Vec<Field>)> = None;
-    for (i, line) in above.iter().enumerate().rev() {
-        let bytes = strip_comment(line.bytes);
-        if look(bytes, separator, decimal_comma, marks).numbers * 2 > width {
+    // A line of the preamble may look like a row; three of them, or one of numbers only, are rows.
+    const ROWS: usize = 3;
+    let (mut best, mut rows): (Option<(usize, usize, Vec<Field>)>, usize) = (None, 0);
+    for (i, line) in lines.iter().enumerate() {
+        if !line.comment && is_row(line) {
+            if best.is_some() {
+                rows += if is_full(line) { ROWS } else { 1 };
+            }
+            if rows >= ROWS {
+                break;
+            }
             continue;
         }
-        let fields: Vec<Field> =
-            header_cells(bytes, separator, width).iter().map(|cell| Field::from_cell(cell)).collect();
-        let known = fields.iter().filter(|field| field.is_known() || is_named(field, options)).count();
+        let cells = header_cells(strip_comment(line.bytes), separator, width);
         // Rows may end with a separator that the header lacks.
-        let exact = fields.len() == width || fields.len() + 1 == width;
+        let exact = cells.len() == width || cells.len() + 1 == width;
+        let fields: Vec<Field> = cells.iter().map(|cell| Field::from_cell(cell)).collect();
+        let known = fields.iter().filter(|field| field.is_known() || is_named(field, options)).count();
         // A line of prose may hold one of the words; a header holds as many names as there are columns.
         let plausible = known > 0 && (exact || (known >= 2 && known * 2 >= fields.len()));
         let score = known * 2 + usize::from(exact);
-        if plausible && best.as_ref().is_none_or(|b| score > b.1) {
-            best = Some((i, score, fields));
+        if plausible && best.as_ref().is_none_or(|b| score >= b.1) {
+            (best, rows) = (Some((i, score, fields)), 0);
         }
     }
     if let Some((i, _, fields)) = best {
         return Some((i, fields));
     }
-    let (i, line) = above.iter().enumerate().next_back().filter(|(_, line)| !line.comment)?;
-    let found = look(line.bytes, separator, decimal_comma, marks);
+    let above = top.checked_sub(1)?;
+    let line = lines.get(above).filter(|line| !line.comment)?;
     let cells = header_cells(line.bytes, separator, width);
-    (found.numbers == 0 && cells.len() == width && !cells.iter().all(|cell| cell.is_empty()))
-        .then(|| (i, cells.iter().map(|cell| Field::from_cell(cell)).collect()))
+    let named = cells.len() == width && cells.iter().all(|cell| cell.parse::<f64>().is_err());
+    (named && !cells.iter().all(String::is_empty))
+        .then(|| (above, cells.iter().map(|cell| Field::from_cell(cell)).collect()))
 }
 
 /// Cells of a header or unit line, as text. Between blanks, a bracketed unit stays with its name,
@@ -327,63 +339,4 @@ fn header_cells(line: &[u8], separator: Separator, width: usize) -> Vec<String> 
         }
     }
     cells
-}
-
-/// One cell of a line.
-pub(super) struct CellAt<'a> {
-    /// The cell without blanks and quotes around it.
-    pub text: &'a [u8],
-    /// Where it stands in the line.
-    pub start: usize,
-    /// Where the next cell begins; none at the end of the line.
-    pub next: Option<usize>,
-    /// A quote that is not closed in this line.
-    pub open_quote: bool,
-}
-
-/// The cell that begins at `from`. A quote counts only at the beginning of a cell and must close in
-/// its own line: a stray one cannot swallow the rows below it.
-pub(super) fn cell(line: &[u8], from: usize, separator: Separator) -> CellAt<'_> {
-    let mut start = from;
-    while start < line.len() && separator.pads(line[start]) {
-        start += 1;
-    }
-    let mut end = start;
-    let mut quoted = None;
-    let mut open_quote = false;
-    if line.get(start) == Some(&b'"') {
-        match closing_quote(line, start + 1) {
-            Some(close) => {
-                quoted = Some(&line[start + 1..close]);
-                end = close + 1;
-            }
-            None => open_quote = true,
-        }
-    }
-    while end < line.len() && !separator.ends(line[end]) {
-        end += 1;
-    }
-    let text = match quoted {
-        // Whatever stands between the closing quote and the separator belongs to a broken cell.
-        Some(inner) if line[start + inner.len() + 2..end].trim_ascii().is_empty() => inner.trim_ascii(),
-        _ => line[start..end].trim_ascii(),
-    };
-    let mut next = end;
-    if separator == Separator::Blanks {
-        while next < line.len() && separator.pads(line[next]) {
-            next += 1;
-        }
-        return CellAt { text, start, next: (next < line.len()).then_some(next), open_quote };
-    }
-    CellAt { text, start, next: (end < line.len()).then_some(end + 1), open_quote }
-}
-
-fn closing_quote(line: &[u8], mut at: usize) -> Option<usize> {
-    loop {
-        at += line.get(at..)?.iter().position(|&b| b == b'"')?;
-        if line.get(at + 1) != Some(&b'"') {
-            return Some(at);
-        }
-        at += 2;
-    }
 }

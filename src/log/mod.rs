@@ -5,6 +5,7 @@
 //! missing values as NaN. Nothing is dropped and nothing is judged here.
 
 mod axis;
+mod cell;
 mod choice;
 mod columns;
 mod delimited;
@@ -14,6 +15,7 @@ mod flags;
 mod format;
 mod header;
 mod input;
+mod mistake;
 mod netcdf;
 mod number;
 mod position;

@@ -40,6 +40,12 @@ impl Marks {
         is_usual(value) || self.numbers.contains(&value)
     }
 
+    /// Whether a number may stand for "missing", or one of the marks is a text that might look like
+    /// a number with a decimal comma.
+    pub fn is_marked(&self, value: f64) -> bool {
+        !self.texts.is_empty() || self.number(value)
+    }
+
     fn text(&self, cell: &[u8]) -> bool {
         let usual = [&b"nan"[..], b"na", b"n/a", b"null"];
         cell.is_empty()
@@ -61,10 +67,15 @@ fn near(size: f64, mark: f64) -> bool {
 
 /// The cell, without blanks around it.
 pub(super) fn parse(cell: &[u8], decimal_comma: bool, marks: &Marks) -> Cell {
-    if marks.text(cell) {
-        return Cell::Missing;
-    }
     let parsed = if decimal_comma { with_comma(cell) } else { fast_float2::parse::<f64, _>(cell).ok() };
+    match parsed {
+        // The common case first.
+        Some(value) if value.is_finite() && !marks.is_marked(value) => {
+            return Cell::Value(value);
+        }
+        _ if marks.text(cell) => return Cell::Missing,
+        _ => {}
+    }
     match parsed {
         // In a log with decimal commas a point may be a thousands mark: only a mark of missing
         // values may carry one.
@@ -80,9 +91,12 @@ pub(super) fn parse(cell: &[u8], decimal_comma: bool, marks: &Marks) -> Cell {
     }
 }
 
+/// Characters of the longest number with a decimal comma.
+pub(super) const LONGEST: usize = 64;
+
 /// A number whose decimal mark is a comma with digits on both sides, or that has no mark at all.
-fn with_comma(cell: &[u8]) -> Option<f64> {
-    let mut buffer = [0_u8; 64];
+pub(super) fn with_comma(cell: &[u8]) -> Option<f64> {
+    let mut buffer = [0_u8; LONGEST];
     if cell.len() > buffer.len() || cell.contains(&b'.') {
         return None;
     }

@@ -1,5 +1,8 @@
 //! What a column holds, recognised from its name.
 
+use std::collections::HashMap;
+use std::sync::LazyLock;
+
 use super::{PressureKind, Role, unit};
 
 /// What a name was taken for.
@@ -107,15 +110,7 @@ const NAMES: &[(Role, &str, &[&str])] = &[
     (
         Role::Altitude,
         PLAIN,
-        &[
-            "altitude",
-            "alt",
-            "altimeter",
-            "altimeter range",
-            "height above seafloor",
-            "height above bottom",
-            "bottom distance",
-        ],
+        &["altitude", "alt", "altimeter", "altimeter range", "height above bottom", "bottom distance"],
     ),
     (Role::Altitude, CF, &["height_above_sea_floor"]),
     (Role::Pitch, PLAIN, &["pitch", "pitch angle"]),
@@ -160,10 +155,14 @@ pub(super) fn recognise(name: &str, unit_text: Option<&str>) -> Option<Recognise
 
 /// Role and kind of name of a key in compact form.
 fn plain_role(key: &str) -> Option<(Role, &'static str)> {
-    NAMES
-        .iter()
-        .find(|(_, _, names)| names.iter().any(|name| compact(name) == key))
-        .map(|&(role, how, _)| (role, how))
+    // Long preambles are searched for the header, so that this is asked often.
+    static BY_KEY: LazyLock<HashMap<String, (Role, &'static str)>> = LazyLock::new(|| {
+        let keys = |&(role, how, names): &(Role, &'static str, &'static [&'static str])| {
+            names.iter().map(move |name| (compact(name), (role, how)))
+        };
+        NAMES.iter().flat_map(keys).collect()
+    });
+    BY_KEY.get(key).copied()
 }
 
 /// The origin of a pressure, where its name tells. WOCE defines CTDPRS as sea pressure (WOCE
@@ -209,6 +208,16 @@ mod tests {
         ] {
             assert_eq!(role(name), Some(expected), "{name}");
         }
+    }
+
+    #[test]
+    fn no_name_stands_for_two_roles() {
+        let mut keys: Vec<String> =
+            NAMES.iter().flat_map(|row| row.2.iter().map(|name| compact(name))).collect();
+        let count = keys.len();
+        keys.sort();
+        keys.dedup();
+        assert_eq!(keys.len(), count);
     }
 
     #[test]

@@ -4,12 +4,13 @@
 //! which also knows quotes, decimal commas and missing marks, and can say what is wrong and where.
 
 use super::axis::MISSING;
-use super::dialect::{self, Dialect, Separator};
+use super::cell::{self, Separator};
+use super::dialect::{self, Dialect};
 use super::flags::Scheme;
-use super::input::decode;
+use super::mistake::Problem;
 use super::number::{self, Cell, Marks};
 use super::time::{self, Nanos, StampParser};
-use super::{Flag, LogError, Place, RowLines};
+use super::{Flag, LogError, RowLines};
 use crate::warning::Warning;
 
 /// What is done with the cells of a column.
@@ -27,8 +28,10 @@ pub(super) enum Action {
     Date,
     /// Time of day.
     Clock,
-    /// A flag for this slot.
+    /// A flag of the IOC scheme for this slot.
     Flag(usize),
+    /// A flag of the WOCE scheme for this slot.
+    WoceFlag(usize),
 }
 
 /// The columns of a log, as far as they are used.
@@ -50,15 +53,6 @@ pub(super) struct Rows {
     pub lines: RowLines,
     /// What was noticed.
     pub warnings: Vec<Warning>,
-}
-
-/// Why a row could not be read; positions count bytes from the beginning of its line.
-#[derive(Debug)]
-enum Problem {
-    TooFew { found: usize },
-    TooMany { at: usize },
-    OpenQuote { at: usize },
-    Cell { column: usize, start: usize, length: usize, last: bool, expected: &'static str },
 }
 
 struct Reader<'a> {
@@ -87,7 +81,7 @@ impl Rows {
             numbers: vec![Vec::with_capacity(expected); slots(|a| matches!(a, Action::Number(_)))],
             stamps: Vec::new(),
             start: None,
-            flags: vec![Vec::new(); slots(|a| matches!(a, Action::Flag(_)))],
+            flags: vec![Vec::new(); slots(|a| matches!(a, Action::Flag(_) | Action::WoceFlag(_)))],
             stamps_without_offset: false,
             lines: RowLines::None,
             warnings: Vec::new(),
@@ -110,8 +104,8 @@ impl Reader<'_> {
             }
             let skipped = match text.get(begin) {
                 None | Some(b'\n') => true,
-                Some(b'#' | b'%' | b'!' | b'*' | b'/' | 0x1a) => {
-                    dialect::is_comment(&text[begin..line_end(text, begin)])
+                Some(b'#' | b'%' | b'/' | 0x1a) => {
+                    dialect::is_comment_row(&text[begin..line_end(text, begin)])
                 }
                 Some(_) => false,
             };
@@ -138,7 +132,7 @@ impl Reader<'_> {
                         Problem::TooFew { .. } | Problem::OpenQuote { .. } | Problem::Cell { last: true, .. }
                     );
                     if end < text.len() || !cut || self.rows.count == 0 {
-                        return Err(self.error(file, line, &text[at..end], &problem));
+                        return Err(problem.error(file, self.dialect, line, &text[at..end]));
                     }
                     self.rows.count += 1;
                     self.leave_out_last(line);
@@ -190,8 +184,10 @@ impl Reader<'_> {
             }
             let mut end = None;
             match action {
-                Action::Number(slot) if !self.dialect.decimal_comma => {
-                    if let Some((value, after)) = self.plain_number(at) {
+                Action::Number(slot) => {
+                    let comma = self.dialect.decimal_comma;
+                    let plain = if comma { self.comma_number(at) } else { self.plain_number(at) };
+                    if let Some((value, after)) = plain {
                         self.rows.numbers[slot].push(value);
                         end = Some(after);
                     }
@@ -209,7 +205,7 @@ impl Reader<'_> {
                 Some(end) => end,
                 None => {
                     let line = &text[start..line_end(text, at)];
-                    let cell = dialect::cell(line, at - start, separator);
+                    let cell = cell::cell(line, at - start, separator);
                     if cell.open_quote {
                         return Err(Problem::OpenQuote { at: cell.start });
                     }
@@ -233,8 +229,12 @@ impl Reader<'_> {
                             self.rows.numbers[slot].push(value);
                         }
                         Action::Flag(slot) => {
-                            let flag = self.flag(cell.text).ok_or_else(|| wrong("a flag from 0 to 9"))?;
-                            self.rows.flags[slot].push(flag);
+                            let flag = self.flag(cell.text, &Scheme::Ioc);
+                            self.rows.flags[slot].push(flag.ok_or_else(|| wrong("a flag from 0 to 9"))?);
+                        }
+                        Action::WoceFlag(slot) => {
+                            let flag = self.flag(cell.text, &Scheme::Woce);
+                            self.rows.flags[slot].push(flag.ok_or_else(|| wrong("a WOCE flag from 1 to 9"))?);
                         }
                         Action::Stamp | Action::StartStamp | Action::Date | Action::Clock => {
                             let (value, expected) = self.time(action, cell.text);
@@ -305,6 +305,20 @@ impl Reader<'_> {
         (clean && value.is_finite() && !self.marks.number(value)).then_some((value, end))
     }
 
+    /// The same with a decimal comma.
+    fn comma_number(&self, at: usize) -> Option<(f64, usize)> {
+        let separator = self.dialect.separator;
+        if separator == Separator::Comma {
+            return None;
+        }
+        let ends = |&byte: &u8| matches!(byte, b'\n' | b'\r' | b' ') || separator.ends(byte);
+        let rest = self.text.get(at..)?;
+        let end = at + rest.iter().take(number::LONGEST).position(ends)?;
+        let value = number::with_comma(&self.text[at..end])?;
+        let clean = separator == Separator::Blanks || self.only_padding(end);
+        (clean && value.is_finite() && !self.marks.is_marked(value)).then_some((value, end))
+    }
+
     #[inline]
     fn only_padding(&self, mut at: usize) -> bool {
         while let Some(&byte) = self.text.get(at) {
@@ -319,10 +333,10 @@ impl Reader<'_> {
         true
     }
 
-    fn flag(&self, cell: &[u8]) -> Option<Flag> {
+    fn flag(&self, cell: &[u8], scheme: &Scheme) -> Option<Flag> {
         match number::parse(cell, self.dialect.decimal_comma, self.marks) {
             Cell::Missing => Some(Flag::NotEvaluated),
-            Cell::Value(value) if value.fract() == 0.0 => Scheme::Ioc.flag(value as i64),
+            Cell::Value(value) if value.fract() == 0.0 => scheme.flag(value as i64),
             _ => None,
         }
     }
@@ -343,48 +357,6 @@ impl Reader<'_> {
                 (stamp.map(|stamp| stamp.nanos), "a time such as 2026-03-01T10:20:30Z (ISO 8601)")
             }
         }
-    }
-
-    fn error(&self, file: &str, line: u64, bytes: &[u8], problem: &Problem) -> LogError {
-        let columns = self.actions.len();
-        let named = if self.dialect.has_header { "the header names" } else { "the other rows have" };
-        let (error, span) = match problem {
-            Problem::TooFew { found } => (
-                LogError::new(file, format!("this row has {found} of the {columns} cells that {named}"))
-                    .remedy("complete the row, or take it out"),
-                None,
-            ),
-            Problem::TooMany { at } => (
-                LogError::new(file, format!("this row has more than the {columns} cells that {named}"))
-                    .remedy(format!(
-                        "take the surplus out; a cell that holds a {} must stand in quotes",
-                        self.dialect.separator.name()
-                    )),
-                Some((*at, bytes.len() - at)),
-            ),
-            Problem::OpenQuote { at } => (
-                LogError::new(file, "this quote is not closed in its line")
-                    .remedy("close it, or take it out"),
-                Some((*at, 1)),
-            ),
-            Problem::Cell { column, start, length, expected, .. } => {
-                let field = &self.dialect.fields[*column];
-                let found = decode(&bytes[*start..(*start + *length).min(bytes.len())]).into_owned();
-                let quoted = if found.contains(' ') { format!("'{found}'") } else { found.clone() };
-                (
-                    LogError::new(
-                        file,
-                        format!("'{found}' in the column '{}' is not {expected}", field.label),
-                    )
-                    .remedy(format!("correct it; if it marks a missing value, type --missing {quoted}")),
-                    Some((*start, *length)),
-                )
-            }
-        };
-        error.at(match span {
-            Some((start, length)) => Place::span(line, bytes, start, length),
-            None => Place::line(line, &decode(bytes)),
-        })
     }
 }
 

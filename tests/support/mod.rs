@@ -1,6 +1,8 @@
 //! Reads the committed tables of reference numbers.
 #![allow(dead_code)] // each test file uses its own part
 
+pub mod logs;
+
 use std::path::{Path, PathBuf};
 
 /// A table with named columns.

@@ -9,6 +9,9 @@ use crate::log::number::Marks;
 /// cannot ask for more.
 const READ_LIMIT: usize = 512 << 20;
 
+/// Deflate shrinks to no less than 1/1032, and a byte may become a double of eight.
+const GROWTH_LIMIT: usize = 8 * 1032;
+
 /// What a variable holds.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub(super) enum Kind {
@@ -107,13 +110,6 @@ impl Variable {
         &self.attributes
     }
 
-    /// Number of values, or none when it is beyond all reason.
-    fn len(&self) -> Option<usize> {
-        let length =
-            self.dimensions.iter().try_fold(1_usize, |product, (_, size)| product.checked_mul(*size))?;
-        (length.checked_mul(8)? <= READ_LIMIT).then_some(length)
-    }
-
     /// What the library writes where no value was written (`NC_FILL_...` of the NetCDF format).
     fn default_fill(&self) -> Option<f64> {
         match self.dtype {
@@ -151,16 +147,16 @@ pub(super) struct Container {
     pub format: &'static str,
     pub variables: Vec<Variable>,
     pub globals: Attributes,
+    /// The most that one variable may take in memory.
+    limit: usize,
 }
 
 impl Container {
     /// Opens a file that is in memory; the error is a clause for people.
     pub fn open(bytes: &[u8]) -> Result<Self, String> {
-        let options = NcOpenOptions {
-            max_read_bytes: READ_LIMIT,
-            max_chunk_bytes: READ_LIMIT,
-            ..NcOpenOptions::default()
-        };
+        let limit = bytes.len().saturating_mul(GROWTH_LIMIT).min(READ_LIMIT);
+        let options =
+            NcOpenOptions { max_read_bytes: limit, max_chunk_bytes: limit, ..NcOpenOptions::default() };
         let file = NcFile::from_bytes_with_options(bytes, options).map_err(|e| e.to_string())?;
         let format = match file.format() {
             NcFormat::Classic => "NetCDF classic",
@@ -170,7 +166,7 @@ impl Container {
         };
         let variables = file.variables().map_err(|e| e.to_string())?.iter().map(Variable::new).collect();
         let globals = Attributes::new(file.global_attributes().map_err(|e| e.to_string())?);
-        Ok(Self { file, format, variables, globals })
+        Ok(Self { file, format, variables, globals, limit })
     }
 
     /// A variable by its name, exactly or without case.
@@ -179,10 +175,20 @@ impl Container {
         exact.or_else(|| self.variables.iter().find(|v| v.name.eq_ignore_ascii_case(name)))
     }
 
+    /// Number of values that the header promises, unless it is beyond all reason.
+    pub fn length(&self, variable: &Variable) -> Result<usize, String> {
+        let mut sizes = variable.dimensions.iter().map(|d| d.1);
+        let length = sizes.try_fold(1_usize, usize::checked_mul);
+        let fits = |length: &usize| length.checked_mul(8).is_some_and(|bytes| bytes <= self.limit);
+        length
+            .filter(fits)
+            .ok_or_else(|| "the header asks for more values than the file can hold".to_string())
+    }
+
     /// The values in row-major order, unpacked, with missing ones as NaN. `valid_min` and the like
     /// are not applied: a small negative pressure on deck is a value.
     pub fn numbers(&self, variable: &Variable, marks: &Marks) -> Result<Vec<f64>, String> {
-        let expected = variable.len().ok_or("the header asks for more values than any log has")?;
+        let expected = self.length(variable)?;
         let array = self.file.read_variable_as_f64(&variable.name).map_err(|e| e.to_string())?;
         let mut values: Vec<f64> = array.iter().copied().collect();
         if values.len() != expected {
@@ -221,7 +227,7 @@ impl Container {
     /// character that is no digit gives -1.
     pub fn codes(&self, variable: &Variable) -> Result<Vec<Option<i64>>, String> {
         if variable.kind == Kind::Text {
-            let expected = variable.len().ok_or("the header asks for more values than any log has")?;
+            let expected = self.length(variable)?;
             let bytes = if variable.dtype == NcType::Char {
                 self.file.read_variable_raw_bytes(&variable.name).map_err(|e| e.to_string())?
             } else {
@@ -244,7 +250,7 @@ impl Container {
 
     /// Texts, without blanks around them; numbers as they are written.
     pub fn words(&self, variable: &Variable) -> Result<Vec<String>, String> {
-        variable.len().ok_or("the header asks for more values than any log has")?;
+        self.length(variable)?;
         match variable.kind {
             Kind::Text => {
                 let texts = self.file.read_variable_as_strings(&variable.name).map_err(|e| e.to_string())?;

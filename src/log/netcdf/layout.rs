@@ -27,6 +27,9 @@ const LEVELS: &[&str] =
 impl Layout {
     /// The arrangement of the samples of `pressure`.
     pub fn of(container: &Container, pressure: &Variable) -> Result<Self, String> {
+        if container.length(pressure)? == 0 {
+            return Err("it holds no value".into());
+        }
         let long = squeezed(pressure);
         let (profile, sample) = match (&long[..], pressure.dimensions.last()) {
             ([], Some(only)) => (None, only.clone()),
