@@ -1,4 +1,5 @@
-//! seaplumb: from the log of a dive or a CTD cast to a depth with its uncertainty.
+#![doc = include_str!("../README.md")]
+
 pub mod cast;
 pub mod cli;
 pub mod column;

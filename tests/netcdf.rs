@@ -1,6 +1,7 @@
 //! NetCDF logs: the files of `tests/golden`, and real casts where they are at hand.
 
-use std::io::Write;
+mod support;
+
 use std::path::{Path, PathBuf};
 
 use seaplumb::log::{Flag, Log, PressureKind, ReadOptions, RowLines, read, read_bytes};
@@ -182,18 +183,8 @@ fn damaged_files_are_errors_that_say_so() {
 
 #[test]
 fn real_casts_are_read_with_position_start_station_and_flags() {
-    let shared = std::env::var_os("SEAPLUMB_SHARED")
-        .map_or_else(|| Path::new(env!("CARGO_MANIFEST_DIR")).join("../shared"), PathBuf::from);
-    let folder = shared.join("data/cruise-casts");
-    let Ok(entries) = std::fs::read_dir(&folder) else {
-        // Not eprintln!, whose text the test harness keeps to itself.
-        let text = format!(
-            "SKIPPED: no real casts at {} (set SEAPLUMB_SHARED); nothing was checked",
-            folder.display()
-        );
-        writeln!(std::io::stderr(), "\n{text}").expect("standard error");
-        return;
-    };
+    let Some(folder) = support::shared_data("data/cruise-casts") else { return };
+    let entries = std::fs::read_dir(&folder).expect("the folder");
     let mut paths: Vec<PathBuf> = entries.filter_map(|entry| Some(entry.ok()?.path())).collect();
     paths.retain(|path| path.extension().is_some_and(|e| e == "nc"));
     paths.sort();

@@ -109,7 +109,7 @@ mod tests {
 
     #[test]
     fn fixed_decimals_are_those_of_the_standard_formatter() {
-        for x in [0.0, 1.0, -1.0, 0.049, 12.3456, -10_871.3604, 99.9996, 1e9, 0.5] {
+        for x in [0.0, 1.0, -1.0, 0.049, 12.345_6, -10_871.360_4, 99.9996, 1e9, 0.5] {
             for decimals in 0..7 {
                 assert_eq!(fixed(x, decimals), format!("{x:.*}", decimals as usize), "{x} {decimals}");
             }
