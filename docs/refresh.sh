@@ -5,7 +5,7 @@ set -euo pipefail
 cd "$(dirname "$0")/.."
 
 lines() {
-    cargo test --release --tests --locked -- --nocapture 2>/dev/null |
+    cargo test --tests --locked -- --nocapture 2>/dev/null |
         grep -o 'VALIDATION | .*' | sed 's/^VALIDATION //' | LC_ALL=C sort -u
 }
 
@@ -32,5 +32,5 @@ if [ "${1:-}" = --check ]; then
     echo "docs/validation.md lists the checks that ran"
 else
     page "$found" >docs/validation.md
-    SEAPLUMB_REFRESH=1 cargo test --release --test readme --locked
+    SEAPLUMB_REFRESH=1 cargo test --test readme --locked
 fi
