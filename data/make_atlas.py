@@ -26,8 +26,7 @@ SHAPE = (len(PRESSURE), len(LATITUDE), len(LONGITUDE))
 CELLS = (len(LATITUDE) - 1, len(LONGITUDE) - 1)
 CORNERS = [(0, 0), (0, 1), (1, 1), (1, 0)]  # north and east of the south-western node
 
-# The line along the Central American isthmus and where it parts the oceans (McDougall et al. 2012, section 4.1 of the
-# algorithm's description); confirmed here by the comparison with every sample.
+# The line along the Central American isthmus that parts the oceans (McDougall et al. 2012), as in src/seawater/atlas/regions.rs.
 ISTHMUS_LONGITUDE = [260.0, 272.59, 276.5, 278.65, 280.73, 292.0]
 ISTHMUS_LATITUDE = [19.55, 13.97, 9.6, 8.1, 9.33, 3.4]
 

@@ -1,4 +1,5 @@
 //! Absolute Salinity by position and pressure against the reference TEOS-10 library.
+#![allow(clippy::print_stdout)] // measured figures, seen with --nocapture
 
 mod support;
 
@@ -9,8 +10,8 @@ use support::{Residuals, Table};
 /// Half a step of the stored ratio (5e-10) times the largest Reference Salinity of the table (38.2 g/kg).
 const STORED_G_KG: f64 = 2e-8;
 
-/// What it costs to hold the deepest value on the Red Sea shelf where the library goes to 0: `R_delta` is 7.0e-5 at most there
-/// (at 101 dbar), times a Reference Salinity of 38.2 g/kg.
+/// What it costs to hold the deepest value on the Red Sea shelf where the library goes to 0: `R_delta` is 7.0e-5 at
+/// most there (at 101 dbar), times a Reference Salinity of 38.2 g/kg.
 const RED_SEA_G_KG: f64 = 2.7e-3;
 
 struct Point {
@@ -23,8 +24,8 @@ struct Point {
 }
 
 impl Point {
-    /// The shelf of the southern Red Sea, one of the few cells that have fewer values than levels: the library goes from the
-    /// deepest value to 0 within one level, here the value is held.
+    /// The shelf of the southern Red Sea, one of the few cells that have fewer values than levels: the library goes
+    /// from the deepest value to 0 within one level, here the value is held.
     fn is_held_here_alone(&self) -> bool {
         (40.0..44.0).contains(&self.longitude_deg)
             && (18.0..22.0).contains(&self.latitude_deg)
@@ -85,7 +86,8 @@ fn coverage_is_told_by_region() {
     }
 }
 
-/// The full comparison: `tests/reference/make_atlas_points.py COUNT FILE` makes the points, the environment variable names the file.
+/// The full comparison: `tests/reference/make_atlas_points.py COUNT FILE` makes the points, the environment variable
+/// names the file.
 #[test]
 fn many_points_in_the_ocean_agree() {
     let Some(path) = std::env::var_os("SEAPLUMB_ATLAS_POINTS") else {

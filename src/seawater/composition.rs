@@ -21,18 +21,18 @@ pub enum Composition {
     Atlas(Arc<AtlasColumn>),
     /// Water of the Baltic Sea, whose rivers bring salt of another composition:
     /// `S_A = ((35.165 04 - 0.087) / 35) S_P + 0.087 g/kg` (Feistel et al. 2010, Ocean Science 6, 3-24; TEOS-10 manual,
-    /// eq. A.5.16).
+    /// appendix A.5).
     Baltic,
 }
 
 impl Composition {
-    /// The composition at a position, `latitude_deg` north positive, `longitude_deg` east positive in either convention: the
-    /// formula of the Baltic Sea inside its outline, else the global atlas ([`Atlas::column`]), else the reference composition.
-    /// [`Composition::coverage`] says which.
+    /// The composition at a position, `latitude_deg` north positive, `longitude_deg` east positive in either
+    /// convention: the formula of the Baltic Sea inside its outline, else the global atlas ([`Atlas::column`]), else
+    /// the reference composition. [`Composition::coverage`] says which.
     ///
-    /// Agrees with the reference TEOS-10 library to 2e-8 g/kg, the stored resolution, at its nodes and in 99.97 % of 100 000 random
-    /// points in the ocean (test `atlas_reference`; the exceptions are told in the description of [`Atlas`]'s module). The atlas
-    /// itself is uncertain by about 0.005 g/kg.
+    /// Agrees with the reference TEOS-10 library to 2e-8 g/kg, the stored resolution, at its nodes and in 99.97 % of
+    /// 100 000 random points in the ocean (test `atlas_reference`; the exceptions are told in the description of
+    /// [`Atlas`]'s module). The atlas itself is uncertain by about 0.005 g/kg (recalled from McDougall et al. 2012).
     pub fn at(latitude_deg: f64, longitude_deg: f64) -> Self {
         if in_baltic(latitude_deg, longitude_deg) {
             return Composition::Baltic;
@@ -43,7 +43,8 @@ impl Composition {
         }
     }
 
-    /// Where the composition is known from. [`Coverage::None`] for the reference composition and for a ratio that was given.
+    /// Where the composition is known from. [`Coverage::None`] for the reference composition and for a ratio that was
+    /// given.
     pub fn coverage(&self) -> Coverage {
         match self {
             Composition::Atlas(_) => Coverage::Atlas,
@@ -52,8 +53,8 @@ impl Composition {
         }
     }
 
-    /// Absolute Salinity in g/kg of water with this `practical_salinity` (PSS-78) at sea pressure `pressure_dbar`, on which
-    /// the atlas depends.
+    /// Absolute Salinity in g/kg of water with this `practical_salinity` (PSS-78) at sea pressure `pressure_dbar`, on
+    /// which the atlas depends.
     #[inline]
     pub fn absolute_salinity_g_kg(&self, practical_salinity: f64, pressure_dbar: f64) -> f64 {
         let reference = REFERENCE_PER_PRACTICAL_G_KG * practical_salinity;

@@ -2,17 +2,19 @@
 //!
 //! One gzip member, so that its CRC-32 tells damage and any unpacking tool opens it. Inside, little-endian, in this order:
 //!
-//! | bytes | what |
-//! |---|---|
-//! | 8 | `R_delta` and a byte 1, the version of this layout |
-//! | 4 x 4 | `u32`: levels `L`, parallels `M`, meridians `N`, steps in one (the unit of the stored ratios is its inverse) |
-//! | 2 L | `u16`: pressures of the levels in dbar, from the surface down |
-//! | (M-1)(N-1) | `u8`: for each cell the number of levels before its bottom, 0 where it has no ocean; west to east, then south to north |
-//! | ceil(L M N / 8) | one bit for each node and level, set where there is a value, lowest bit of a byte first; west to east, then south to north, then from the surface down |
-//! | 3 V | the V values in that order: all low bytes, then all middle bytes, then all high bytes of the folded differences |
+//! 1. 8 bytes: `R_delta` and a byte 1, the version of this layout.
+//! 2. 4 `u32`: levels `L`, parallels `M`, meridians `N`, steps in one (the unit of the stored ratios is its inverse).
+//! 3. L `u16`: pressures of the levels in dbar, from the surface down.
+//! 4. (M - 1)(N - 1) bytes: for each cell the number of levels before its bottom, 0 where it has no ocean; west to east,
+//!    then south to north.
+//! 5. ceil(L M N / 8) bytes: one bit for each node and level, set where there is a value, lowest bit of a byte first;
+//!    west to east, then south to north, then from the surface down.
+//! 6. 3 V bytes: the V values in that order, first all low bytes of their folded differences, then all middle, then all
+//!    high bytes.
 //!
-//! A difference is taken, in steps, to the same node one level above, at the surface to the neighbour in the west; a node without
-//! value counts as 0. It is folded to be positive: `2 d` for `d >= 0`, else `-2 d - 1`. `data/make_atlas.py` writes the file.
+//! A difference is taken, in steps, to the same node one level above, at the surface to the neighbour in the west; a
+//! node without value counts as 0. It is folded to be positive: `2 d` for `d >= 0`, else `-2 d - 1`.
+//! `data/make_atlas.py` writes the file.
 
 use flate2::read::GzDecoder;
 use std::io::Read;

@@ -1,25 +1,27 @@
 //! The global atlas of the Absolute Salinity Anomaly Ratio `R_delta`.
 //!
-//! McDougall, Jackett, Millero, Pawlowicz and Barker (2012), *A global algorithm for estimating Absolute Salinity*, Ocean Science
-//! 8, 1123-1134 (TEOS-10 manual, appendix A.5): nodes every 4 deg of longitude from 0 to 360 and of latitude from 86 S to 90 N, 45
-//! levels of sea pressure from 0 to 6131 dbar. In between, `R_delta` is bilinear in longitude and latitude on each level, then
-//! linear in pressure, with these rules:
+//! McDougall, Jackett, Millero, Pawlowicz and Barker (2012), *A global algorithm for estimating Absolute Salinity*,
+//! Ocean Science 8, 1123-1134 (TEOS-10 manual, appendix A.5): nodes every 4 deg of longitude from 0 to 360 and of
+//! latitude from 86 S to 90 N, 45 levels of sea pressure from 0 to 6131 dbar. In between, `R_delta` is bilinear in
+//! longitude and latitude on each level, then linear in pressure, with these rules:
 //!
-//! - a node that is missing (land, or deeper than the sea floor there) is replaced by the mean of the nodes of the cell that are not;
+//! - a node that is missing (land, or deeper than the sea floor there) is replaced by the mean of the nodes of the
+//!   cell that are not;
 //! - near the Central American isthmus a node in the other ocean counts as missing;
 //! - below the deepest level of a cell, and where no node of it has a value, the level above is held.
 //!
-//! The nodes were sampled from the reference TEOS-10 library by `data/make_atlas.py`; the layout of `data/composition-atlas.gz` is
-//! described in `file.rs`, its licence is in `data/LICENSE-atlas.txt`. Unpacked once, when first asked for.
+//! The nodes were sampled from the reference TEOS-10 library by `data/make_atlas.py`; the layout of
+//! `data/composition-atlas.gz` is described in `file.rs`, its licence is in `data/LICENSE-atlas.txt`. Unpacked once,
+//! when first asked for.
 //!
 //! What in the published atlas may surprise:
 //!
 //! - The Black Sea north of 42 N, most of the Red Sea and the Persian Gulf are not covered.
 //! - Where a node is missing, `R_delta` steps from cell to cell, because its cells replace it by different means.
-//! - The meridians of 0 and 360 deg are kept apart, and between 58 S and 26 S from 1416 to 2279 dbar the former lacks values that the
-//!   latter has: a step at Greenwich of up to 4.2e-5 (0.0015 g/kg), kept as it is.
-//! - In a few cells, on land, beside the isthmus and in the southern Red Sea, the reference library goes from the deepest value to 0 within
-//!   one level; here that value is held, as everywhere else.
+//! - The meridians of 0 and 360 deg are kept apart, and between 58 S and 26 S from 1416 to 2279 dbar the former lacks
+//!   values that the latter has: a step at Greenwich of up to 4.2e-5 (0.0015 g/kg), kept as it is.
+//! - In a few cells, on land, beside the isthmus and in the southern Red Sea, the reference library goes from the
+//!   deepest value to 0 within one level; here that value is held, as everywhere else.
 
 mod file;
 mod regions;
@@ -70,7 +72,8 @@ impl Atlas {
     /// 3 ms (test `unpacking_costs_milliseconds`).
     pub fn global() -> &'static Atlas {
         static ATLAS: OnceLock<Atlas> = OnceLock::new();
-        // The file is part of the program and a test holds it against its checksum: this cannot fail where the tests passed.
+        // The file is part of the program and a test holds it against its checksum: this cannot fail where the tests
+        // passed.
         ATLAS.get_or_init(|| Atlas::from_packed(PACKED).expect("the embedded atlas is whole"))
     }
 
@@ -88,9 +91,9 @@ impl Atlas {
     /// `R_delta` below a position, `latitude_deg` north positive, `longitude_deg` east positive in either convention
     /// (-180 to 180 or 0 to 360).
     ///
-    /// `None` where the atlas has nothing to say: no node of the cell is in the sea (inland, the northern Black Sea), south of 86 S, or
-    /// the position is not finite or no latitude. The Baltic Sea has some nodes, but a formula of its own
-    /// ([`Composition::at`](super::Composition::at) chooses).
+    /// `None` where the atlas has nothing to say: no node of the cell is in the sea (inland, the northern Black Sea),
+    /// south of 86 S, or the position is not finite or no latitude. The Baltic Sea has some nodes, but a formula of
+    /// its own ([`Composition::at`](super::Composition::at) chooses).
     pub fn column(&self, latitude_deg: f64, longitude_deg: f64) -> Option<AtlasColumn> {
         let longitude_deg = eastward_deg(longitude_deg)?;
         if !(SOUTH_DEG..=NORTH_DEG).contains(&latitude_deg) {
@@ -111,8 +114,8 @@ impl Atlas {
         Some(AtlasColumn { pressure_dbar: self.pressure_dbar, ratio, deepest })
     }
 
-    /// The cell around a position inside the atlas; a position on a meridian or parallel of nodes belongs to the cell in the
-    /// east and north.
+    /// The cell around a position inside the atlas; a position on a meridian or parallel of nodes belongs to the cell
+    /// in the east and north.
     fn cell(&self, latitude_deg: f64, longitude_deg: f64) -> Cell {
         let place = |distance_deg: f64, nodes: usize| {
             let along = distance_deg / SPACING_DEG;
@@ -166,7 +169,8 @@ struct Cell {
 }
 
 impl AtlasColumn {
-    /// `R_delta` at sea pressure `pressure_dbar`, linear between the levels; above the first and below the last it is held.
+    /// `R_delta` at sea pressure `pressure_dbar`, linear between the levels; above the first and below the last it is
+    /// held.
     pub fn anomaly_ratio(&self, pressure_dbar: f64) -> f64 {
         let p = pressure_dbar.clamp(self.pressure_dbar[0], self.pressure_dbar[LEVELS - 1]);
         let below = self.pressure_dbar.partition_point(|&level| level <= p).clamp(1, LEVELS - 1);

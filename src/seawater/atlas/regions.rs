@@ -1,7 +1,8 @@
 //! Two regions where neighbouring nodes of the atlas do not speak for each other.
 //!
-//! Their outlines belong to the published algorithm (McDougall et al. 2012; TEOS-10 manual, appendix A.5). The corners were
-//! confirmed by probing the reference TEOS-10 library: the Baltic outline to 0.001 deg, the isthmus by `data/make_atlas.py`.
+//! Their outlines belong to the published algorithm (McDougall et al. 2012; TEOS-10 manual, appendix A.5). The corners
+//! are recalled and were confirmed by probing the reference TEOS-10 library: the Baltic outline to 0.001 deg, the line
+//! along the isthmus to 1e-6 deg by bisecting the step of `R_delta` across it (test `atlas_reference` has both sides).
 
 /// Western outline of the Baltic, from south to north: `(latitude, longitude)` in degrees.
 const BALTIC_WEST_DEG: [(f64, f64); 3] = [(50.0, 12.6), (59.0, 7.0), (69.0, 26.0)];

@@ -11,6 +11,7 @@ fn nodes(atlas: &Atlas, south: usize, west: usize, level: usize) -> [Option<f64>
 }
 
 #[test]
+#[allow(clippy::print_stdout)] // a measured figure, seen with --nocapture
 fn unpacking_costs_milliseconds() {
     let start = std::time::Instant::now();
     let atlas = Atlas::from_packed(PACKED).unwrap();
@@ -68,8 +69,8 @@ fn the_vertical_is_linear_between_levels_and_held_beyond() {
 
 #[test]
 fn the_isthmus_is_not_crossed() {
-    // The deep Pacific is anomalous, the deep Caribbean hardly: no position on either side takes from the other. At 1010 dbar the
-    // nodes 4 deg off the isthmus on either side are apart by more than a factor of two.
+    // The deep Pacific is anomalous, the deep Caribbean hardly: no position on either side takes from the other. At
+    // 1010 dbar the nodes 4 deg off the isthmus on either side are apart by more than a factor of two.
     let atlas = Atlas::global();
     let at = |latitude, longitude| atlas.column(latitude, longitude).unwrap().anomaly_ratio(1010.0);
     let (pacific, caribbean) = (at(6.0, 276.0), at(14.0, 280.0));
@@ -96,8 +97,8 @@ proptest! {
 
     #[test]
     fn continuous_across_the_date_line(latitude in -78.0..66.0f64, pressure in 0.0..6000.0f64) {
-        // Where the two nodes on the meridian have values and neither cell ends above: a missing node is replaced by another
-        // mean in each of its cells, and there the published interpolation has a step.
+        // Where the two nodes on the meridian have values and neither cell ends above: a missing node is replaced by
+        // another mean in each of its cells, and there the published interpolation has a step.
         let atlas = Atlas::global();
         let south = ((latitude - SOUTH_DEG) / 4.0) as usize;
         let below = atlas.pressure_dbar.partition_point(|&p| p <= pressure);
@@ -114,8 +115,8 @@ proptest! {
 
     #[test]
     fn continuous_across_meridians_of_nodes_at_the_surface(latitude in -78.0..90.0f64, meridian in 0..90usize) {
-        // At the surface a node is missing in all of its cells or in none, but a missing one differs from cell to cell: the
-        // ratio is continuous where the two nodes on the meridian are there.
+        // At the surface a node is missing in all of its cells or in none, but a missing one differs from cell to
+        // cell: the ratio is continuous where the two nodes on the meridian are there.
         let atlas = Atlas::global();
         let south = (((latitude - SOUTH_DEG) / 4.0) as usize).min(43);
         let longitude = 4.0 * meridian as f64;
