@@ -18,6 +18,10 @@ pub const STANDARD_ABSOLUTE_SALINITY_G_KG: f64 = 35.165_04;
 /// Reference Salinity over Practical Salinity in g/kg (Millero et al. 2008, eq. 6.2).
 pub const REFERENCE_PER_PRACTICAL_G_KG: f64 = STANDARD_ABSOLUTE_SALINITY_G_KG / 35.0;
 
+/// Absolute Salinity in g/kg of the river water of the Baltic, `S_P = 0` (Feistel et al. 2010, Ocean Science 6, 3-24; TEOS-10
+/// manual, appendix A.5).
+pub const BALTIC_RIVER_SALT_G_KG: f64 = 0.087;
+
 /// Temperature of 0 degC in K (ITS-90).
 pub const CELSIUS_ZERO_K: f64 = 273.15;
 

@@ -201,7 +201,7 @@ impl Reduction {
         }
     }
 
-    fn composition(&self) -> crate::seawater::Composition {
+    fn composition(&self) -> &crate::seawater::Composition {
         self.model.water.composition()
     }
 
@@ -297,7 +297,7 @@ fn choose_water(
         ));
     }
     let salt = if log.conductivity.is_some() { Salt::Conductivity } else { Salt::Practical };
-    let water = |nodes: Vec<WaterNode>| Water::new(nodes, salt, settings.composition, deepest_dbar);
+    let water = |nodes: Vec<WaterNode>| Water::new(nodes, salt, settings.composition.clone(), deepest_dbar);
     let other_leg = match leg {
         LegChoice::Down if spans(&up, COMPARE_SHARE) => Some(water(up.clone())?),
         LegChoice::Up if spans(&down, COMPARE_SHARE) => Some(water(down.clone())?),

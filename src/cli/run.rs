@@ -192,7 +192,7 @@ fn read_profile(source: &str, settings: &Settings) -> Result<OtherCast, CallErro
         temperature_degc: temperature.values[i],
         salt: salt.values[i],
     }));
-    let water = Water::new(levels, kind, settings.composition, 0.0)
+    let water = Water::new(levels, kind, settings.composition.clone(), 0.0)
         .map_err(|e| wrong(LogError::new(source, e.to_string())))?;
     Ok(OtherCast { water, source: source.to_string() })
 }

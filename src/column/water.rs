@@ -121,8 +121,8 @@ impl Water {
     }
 
     /// What its salt is made of.
-    pub fn composition(&self) -> Composition {
-        self.composition
+    pub fn composition(&self) -> &Composition {
+        &self.composition
     }
 
     /// The same water, continued at least to `to_dbar`.

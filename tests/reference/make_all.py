@@ -5,6 +5,7 @@
 
 import sys
 
+import make_atlas_points
 import make_check_casts
 import make_cruise_casts
 import make_density
@@ -17,6 +18,7 @@ import make_student_t
 import make_unesco44
 
 MAKERS = [
+    make_atlas_points,
     make_density,
     make_practical_salinity,
     make_unesco44,
