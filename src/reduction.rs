@@ -5,7 +5,7 @@ use crate::column::{Column, ProfileError, Salt, Water, WaterNode, bin_means, mea
 use crate::depth::{Deepest, Model, Place, Rung, ladder};
 use crate::gravity::SurfaceGravity;
 use crate::log::{Flag, Log, LogError, PressureKind};
-use crate::seawater::{VALID_TO_DBAR, density_kg_m3};
+use crate::seawater::{Composition, VALID_TO_DBAR, density_kg_m3};
 use crate::settings::{LegChoice, Settings};
 use crate::uncertainty::{Budget, DepthUncertainty, Evidence, SurveyOrder, WaterOrigin, survey_orders};
 use crate::warning::Warning;
@@ -80,6 +80,7 @@ impl Reduction {
     /// the water, or too little water to make a profile of.
     pub fn new(log: Log, settings: &Settings) -> Result<Self, LogError> {
         let (latitude_deg, longitude_deg) = position(&log, settings)?;
+        let composition = composition(settings, latitude_deg, longitude_deg);
         let cast_settings = settings.cast();
         let cast = Cast::new(&log, &cast_settings)?;
         let elapsed_s = log.time.as_ref().map(|t| t.elapsed_s.as_slice());
@@ -93,7 +94,8 @@ impl Reduction {
             LogError::new(&log.source, format!("the water column cannot be built: {e}"))
                 .remedy("give the water of a nearby cast: --profile FILE")
         };
-        let chosen = choose_water(&log, &cast, settings, deepest_dbar, &mut warnings).map_err(not_water)?;
+        let chosen = choose_water(&log, &cast, settings, &composition, deepest_dbar, &mut warnings)
+            .map_err(not_water)?;
 
         let place = Place {
             latitude_deg,
@@ -113,6 +115,7 @@ impl Reduction {
             other_leg: chosen.other_leg.as_ref(),
             pressure_follows_air: cast.tare.follows_air() || cast.pressure_kind == PressureKind::Gauge,
             air_pressure_given: settings.air_pressure_hpa.is_some(),
+            composition_known: *model.water.composition() != Composition::Reference,
             supplied: &settings.uncertainties,
         };
         let uncertainty =
@@ -124,7 +127,20 @@ impl Reduction {
         let survey_orders = survey_orders(deepest_m, budget.expanded_for_m(0.95));
 
         warnings.extend(noticed(&cast, &model, &deepest));
-        let assumptions = assumed(&cast, settings);
+        let of_water = model.water.composition();
+        let known = chosen.origin == WaterOrigin::StandardOcean || *of_water != Composition::Reference;
+        if !known && settings.composition.is_none() && longitude_deg.is_some() {
+            warnings.push(Warning::new(
+                "composition_not_known",
+                "the atlas of the composition of the salt does not cover this position (land, or a sea of its own): the reference composition is used, and its term widened",
+                "check the position",
+            ));
+        }
+        let mut assumptions = assumed(&cast, settings);
+        if !known {
+            let why = if longitude_deg.is_none() { ": --lon DEGREES, for that of the place" } else { "" };
+            assumptions.push(format!("salt of the reference composition{why}"));
+        }
         Ok(Self {
             latitude_deg,
             longitude_deg,
@@ -201,7 +217,7 @@ impl Reduction {
         }
     }
 
-    fn composition(&self) -> &crate::seawater::Composition {
+    fn composition(&self) -> &Composition {
         self.model.water.composition()
     }
 
@@ -226,6 +242,13 @@ fn position(log: &Log, settings: &Settings) -> Result<(f64, Option<f64>), LogErr
     Ok((latitude, settings.longitude_deg.or(of_log.and_then(|p| p.longitude_deg))))
 }
 
+/// The salt by the user's word, else by the atlas at the position, else of the reference composition.
+fn composition(settings: &Settings, latitude_deg: f64, longitude_deg: Option<f64>) -> Composition {
+    settings.composition.clone().unwrap_or_else(|| {
+        longitude_deg.map_or(Composition::Reference, |longitude| Composition::at(latitude_deg, longitude))
+    })
+}
+
 struct ChosenWater {
     water: Water,
     other_leg: Option<Water>,
@@ -238,6 +261,7 @@ fn choose_water(
     log: &Log,
     cast: &Cast,
     settings: &Settings,
+    composition: &Composition,
     deepest_dbar: f64,
     warnings: &mut Vec<Warning>,
 ) -> Result<ChosenWater, ProfileError> {
@@ -247,7 +271,7 @@ fn choose_water(
             warnings.push(continued(&format!("the profile of {}", other.source), reach, deepest_dbar));
         }
         return Ok(ChosenWater {
-            water: other.water.continued_to(deepest_dbar),
+            water: other.water.with_composition(composition.clone()).continued_to(deepest_dbar),
             other_leg: None,
             origin: WaterOrigin::OtherCast,
             words: format!("profile of {}", other.source),
@@ -297,7 +321,7 @@ fn choose_water(
         ));
     }
     let salt = if log.conductivity.is_some() { Salt::Conductivity } else { Salt::Practical };
-    let water = |nodes: Vec<WaterNode>| Water::new(nodes, salt, settings.composition.clone(), deepest_dbar);
+    let water = |nodes: Vec<WaterNode>| Water::new(nodes, salt, composition.clone(), deepest_dbar);
     let other_leg = match leg {
         LegChoice::Down if spans(&up, COMPARE_SHARE) => Some(water(up.clone())?),
         LegChoice::Up if spans(&down, COMPARE_SHARE) => Some(water(down.clone())?),
@@ -422,6 +446,5 @@ fn assumed(cast: &Cast, settings: &Settings) -> Vec<String> {
     if settings.reference_below_sensor_m.is_none() {
         sentences.push("the reference point is the pressure sensor: --reference-below M".to_string());
     }
-    sentences.push("reference composition of the salt".to_string());
     sentences
 }

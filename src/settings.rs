@@ -47,8 +47,8 @@ pub struct Settings {
     pub tare: TareChoice,
     /// Leg that the water is taken from.
     pub leg: LegChoice,
-    /// Composition of the salt.
-    pub composition: Composition,
+    /// Composition of the salt; `None` takes the atlas's at the position, where longitude is known too.
+    pub composition: Option<Composition>,
     /// Water of another cast, to be used in place of the log's.
     pub profile: Option<OtherCast>,
     /// Gravity at the surface against normal gravity.
@@ -78,7 +78,7 @@ impl Default for Settings {
             air_pressure_hpa: None,
             tare: TareChoice::Auto,
             leg: LegChoice::Down,
-            composition: Composition::Reference,
+            composition: None,
             profile: None,
             surface_gravity: None,
             gradient_eotvos: None,

@@ -32,7 +32,7 @@ fn settings(truth: &serde_json::Value) -> Settings {
             Some("absolute") => PressureKind::Absolute,
             _ => PressureKind::Sea,
         }),
-        composition: Composition::Reference,
+        composition: Some(Composition::Reference),
         ..Settings::default()
     }
 }
@@ -78,6 +78,23 @@ fn lander_dive_deepest() {
     let noise = r.cast.noise.deviation_dbar.expect("noise");
     let put_in = truth["noise_standard_deviation"]["pressure_dbar"].as_f64().expect("dbar");
     assert!((noise / put_in - 1.0).abs() < 0.1, "noise {noise} against {put_in}");
+}
+
+/// Salt of the place, by the atlas: the script knows what that is worth.
+#[test]
+fn composition_of_the_place() {
+    for (file, tolerance) in
+        [("lander-dive.csv", 0.02), ("salinity-cast.csv", 0.01), ("shelf-cast.csv", 0.02)]
+    {
+        let truth = truth(file);
+        let place = reduced(file, &Settings { composition: None, ..settings(&truth) });
+        let reference = reduced(file, &settings(&truth));
+        let put_in =
+            number(&truth, "deepest_depth_with_composition_atlas_m") - number(&truth, "deepest_depth_m");
+        assert!((place.deepest_m - reference.deepest_m - put_in).abs() < 0.001, "{file}");
+        let depth = number(&truth, "deepest_depth_with_composition_atlas_m");
+        assert!((place.deepest_m - depth).abs() < tolerance, "{file}: {}", place.deepest_m);
+    }
 }
 
 #[test]

@@ -112,6 +112,8 @@ pub enum LegArg {
 /// What the salt is made of.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
 pub enum CompositionArg {
+    /// That of the place, by the global atlas (needs the longitude)
+    Atlas,
     /// Reference-composition seawater
     Reference,
 }
@@ -157,7 +159,7 @@ pub struct SharedArgs {
     pub profile: Option<String>,
 
     /// What the salt is made of
-    #[arg(long, value_enum, default_value_t = CompositionArg::Reference, help_heading = "Water")]
+    #[arg(long, value_enum, default_value_t = CompositionArg::Atlas, help_heading = "Water")]
     pub composition: CompositionArg,
 
     /// Air pressure at the sea surface [default: 1013.25]

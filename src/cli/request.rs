@@ -58,7 +58,8 @@ pub(super) fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
             LegArg::Both => LegChoice::Both,
         },
         composition: match args.composition {
-            CompositionArg::Reference => Composition::Reference,
+            CompositionArg::Atlas => None,
+            CompositionArg::Reference => Some(Composition::Reference),
         },
         surface_gravity: anomaly
             .map(SurfaceGravity::FreeAirAnomaly)

@@ -8,7 +8,8 @@ use crate::column::{Salt, Water, WaterNode, bin_means};
 use crate::log::{self, LogError, PressureKind, ReadOptions};
 use crate::reduction::Reduction;
 use crate::report::{DeepestCsv, DeepestJson, DeepestText, Report, SeriesCsv, SeriesJson};
-use crate::settings::{OtherCast, STANDARD_AIR_HPA, Settings};
+use crate::seawater::Composition;
+use crate::settings::{OtherCast, STANDARD_AIR_HPA};
 use std::io::{self, BufWriter, Write};
 use std::process::ExitCode;
 
@@ -86,7 +87,7 @@ fn reduce_all(
         return Err(CallError(text.to_string()).into());
     }
     let mut folder = args.into.as_deref().map(|dir| Folder::open(dir, args.replace)).transpose()?;
-    settings.profile = args.profile.as_deref().map(|file| read_profile(file, &settings)).transpose()?;
+    settings.profile = args.profile.as_deref().map(read_profile).transpose()?;
 
     let mut out = BufWriter::with_capacity(1 << 16, out);
     // Begun with the first result: when no log can be reduced, nothing is printed that looks like one.
@@ -161,8 +162,8 @@ fn note(notes: &mut dyn Write, reduction: &Reduction) -> io::Result<()> {
     Ok(())
 }
 
-/// The water of another cast.
-fn read_profile(source: &str, settings: &Settings) -> Result<OtherCast, CallError> {
+/// The water of another cast; its composition follows from the position of the dive.
+fn read_profile(source: &str) -> Result<OtherCast, CallError> {
     let wrong = |e: LogError| CallError(format!("--profile: {e}"));
     let mut logs = log::read(source, &ReadOptions::default()).map_err(wrong)?;
     if logs.len() != 1 {
@@ -192,7 +193,7 @@ fn read_profile(source: &str, settings: &Settings) -> Result<OtherCast, CallErro
         temperature_degc: temperature.values[i],
         salt: salt.values[i],
     }));
-    let water = Water::new(levels, kind, settings.composition.clone(), 0.0)
+    let water = Water::new(levels, kind, Composition::Reference, 0.0)
         .map_err(|e| wrong(LogError::new(source, e.to_string())))?;
     Ok(OtherCast { water, source: source.to_string() })
 }

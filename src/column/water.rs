@@ -125,6 +125,12 @@ impl Water {
         &self.composition
     }
 
+    /// The same water with salt of another composition.
+    #[must_use]
+    pub fn with_composition(&self, composition: Composition) -> Self {
+        Self { composition, ..self.clone() }
+    }
+
     /// The same water, continued at least to `to_dbar`.
     #[must_use]
     pub fn continued_to(&self, to_dbar: f64) -> Self {

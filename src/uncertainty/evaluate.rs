@@ -6,7 +6,7 @@ use crate::cast::{Noise, Tare, TareBasis};
 use crate::column::{Column, ProfileError, Salt, Water, WaterNode, WaterShift};
 use crate::constants::{HPA_PER_DBAR, STANDARD_ATMOSPHERE_DBAR};
 use crate::depth::{Deepest, Model, Place, Shift};
-use crate::seawater::density_kg_m3;
+use crate::seawater::{Composition, density_kg_m3};
 use std::collections::BTreeMap;
 
 /// Relative standard uncertainty of pressure when no certificate is at hand.
@@ -14,6 +14,11 @@ const ASSUMED_PRESSURE_RELATIVE: f64 = 1.0e-4;
 /// Standard uncertainty of the air pressure in hPa when the user gives it, and when the standard atmosphere is assumed.
 const GIVEN_AIR_HPA: f64 = 1.0;
 const ASSUMED_AIR_HPA: f64 = 10.0;
+/// Standard uncertainty of Absolute Salinity in g/kg by the atlas of composition (recalled from McDougall et al. 2012).
+const ATLAS_G_KG: f64 = 0.005;
+/// The same where the reference composition stands in for that of the place: in the open ocean the two differ by 0 to 0.027
+/// g/kg (TEOS-10 manual, appendix A.5), a rectangular distribution.
+const REFERENCE_COMPOSITION_G_KG: f64 = 0.015;
 /// Standard uncertainty of the equation of state in ppm of specific volume, to 100 MPa and beyond (from memory: no table
 /// of the releases at hand).
 const ASSUMED_EOS_PPM: (f64, f64) = (10.0, 20.0);
@@ -68,6 +73,8 @@ pub struct Evidence<'a> {
     pub pressure_follows_air: bool,
     /// Whether the user gave the air pressure, and likewise the water level (their defaults are tighter then).
     pub air_pressure_given: bool,
+    /// Whether the composition of the salt is that of the place.
+    pub composition_known: bool,
     /// Standard uncertainties by the user's word.
     pub supplied: &'a BTreeMap<Term, Supplied>,
 }
@@ -181,9 +188,7 @@ impl Evaluator<'_> {
                 Salt::Practical | Salt::Absolute => Term::SalinityCalibration,
             };
             lines.push(self.plain(term, 0.0, |u| water(WaterShift { salt: u, ..WaterShift::default() }))?);
-            lines.push(self.plain(Term::SalinityComposition, 0.0, |u| {
-                water(WaterShift { absolute_salinity_g_kg: u, ..WaterShift::default() })
-            })?);
+            lines.push(self.composition()?);
         }
         lines.push(self.equation_of_state()?);
         lines.push(self.representativeness()?);
@@ -308,6 +313,20 @@ impl Evaluator<'_> {
                 },
                 ..Shift::default()
             }
+        })
+    }
+
+    /// Value: how far the deepest water is from the reference composition.
+    fn composition(&self) -> Result<Line, ProfileError> {
+        let otherwise = if self.evidence.composition_known { ATLAS_G_KG } else { REFERENCE_COMPOSITION_G_KG };
+        let (u, basis) = self.settled(Term::SalinityComposition, otherwise);
+        let water = &self.model.water;
+        let deepest = &water.nodes()[water.nodes().len() - 1];
+        let anomaly_g_kg = water.salinity_of_level_g_kg(deepest)
+            - water.with_composition(Composition::Reference).salinity_of_level_g_kg(deepest);
+        self.line(Term::SalinityComposition, anomaly_g_kg, u, basis, |u| Shift {
+            water: WaterShift { absolute_salinity_g_kg: u, ..WaterShift::default() },
+            ..Shift::default()
         })
     }
 

@@ -125,7 +125,6 @@ impl Term {
         match self {
             Term::TemperatureCalibration => Some(0.002),
             Term::ConductivityCalibration | Term::SalinityCalibration => Some(0.003),
-            Term::SalinityComposition => Some(0.005),
             Term::SurfaceGravity => Some(35.0),
             Term::GravityGradient => Some(50.0),
             Term::GeoidHeight => Some(30.0),
@@ -136,6 +135,7 @@ impl Term {
             | Term::PressureNoise
             | Term::Tare
             | Term::AirPressure
+            | Term::SalinityComposition
             | Term::EquationOfState
             | Term::ProfileRepresentativeness
             | Term::SurfaceGap
