@@ -6,7 +6,7 @@ cd "$(dirname "$0")/.."
 
 lines() {
     cargo test --tests --locked -- --nocapture 2>/dev/null |
-        grep -o 'VALIDATION | .*' | sed 's/^VALIDATION //' | LC_ALL=C sort -u
+        grep -oE 'VALIDATION( \| [^|]+){5} \|' | sed 's/^VALIDATION //' | LC_ALL=C sort -u
 }
 
 page() {

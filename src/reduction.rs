@@ -1,6 +1,6 @@
 //! The whole way of one log: cast, water column, depth, uncertainty.
 
-use crate::cast::{Cast, Leg, Quantity, Reason, TareBasis};
+use crate::cast::{Cast, Leg, Quantity, Reason, TareBasis, median};
 use crate::column::{Column, ProfileError, Salt, Water, WaterNode, bin_means, mean_of_legs};
 use crate::depth::{Deepest, Model, Place, Rung, ladder};
 use crate::gravity::SurfaceGravity;
@@ -10,6 +10,8 @@ use crate::settings::{LegChoice, Settings};
 use crate::uncertainty::{Budget, DepthUncertainty, Evidence, SurveyOrder, WaterOrigin, survey_orders};
 use crate::warning::Warning;
 
+/// Water with less salt than this in g/kg is fresh.
+const FRESH_G_KG: f64 = 0.5;
 /// A leg must span this share of the cast to speak for its water.
 const SPAN_SHARE: f64 = 0.5;
 /// The other leg must span this share to be held against the chosen one.
@@ -90,9 +92,17 @@ impl Reduction {
 
         let mut warnings = cast.warnings.clone();
         let deepest_dbar = deepest.pressure_dbar.max(deepest.raw_pressure_dbar);
+        let span_dbar = span(&cast);
         let not_water = |e: ProfileError| {
-            LogError::new(&log.source, format!("the water column cannot be built: {e}"))
-                .remedy("give the water of a nearby cast: --profile FILE")
+            let why = match e {
+                ProfileError::TooFew { .. } => {
+                    format!(
+                        "the samples in the water span {span_dbar:.1} dbar, too little to make a water column of"
+                    )
+                }
+                other => format!("the water column cannot be built: {other}"),
+            };
+            LogError::new(&log.source, why).remedy("give the water of a nearby cast: --profile FILE")
         };
         let chosen = choose_water(&log, &cast, settings, &composition, deepest_dbar, &mut warnings)
             .map_err(not_water)?;
@@ -300,7 +310,7 @@ fn choose_water(
                 water: Water::standard_ocean(deepest_dbar),
                 other_leg: None,
                 origin: WaterOrigin::StandardOcean,
-                words: "standard ocean (no conductivity or salinity in the log)".to_string(),
+                words: "standard ocean (the log has no temperature with conductivity or salinity that can be used)".to_string(),
             });
         }
     };
@@ -355,6 +365,12 @@ fn continued(what: &str, reach_dbar: f64, deepest_dbar: f64) -> Warning {
     )
 }
 
+/// From the smallest to the largest pressure in the water, in dbar.
+fn span(cast: &Cast) -> f64 {
+    let pressures = || cast.legs.water().map(|i| cast.pressure_dbar[i]).filter(|p| p.is_finite());
+    pressures().fold(f64::NEG_INFINITY, f64::max) - pressures().fold(f64::INFINITY, f64::min)
+}
+
 /// Levels of one leg; the bottom belongs to either.
 fn leg_levels(log: &Log, cast: &Cast, leg: Leg) -> Vec<WaterNode> {
     let (Some(t), Some(salt)) = (&log.temperature, log.conductivity.as_ref().or(log.salinity.as_ref()))
@@ -402,6 +418,14 @@ fn noticed(cast: &Cast, model: &Model, deepest: &Deepest) -> Vec<Warning> {
         ));
     }
     let water = model.water.nodes();
+    let mut salts: Vec<f64> = water.iter().map(|n| model.water.salinity_of_level_g_kg(n)).collect();
+    if let Some(usual) = median(&mut salts).filter(|s| *s < FRESH_G_KG) {
+        warnings.push(Warning::new(
+            "fresh_water",
+            format!("the water is fresh ({usual:.2} g/kg): right in a lake; in the sea the conductivity was not measured"),
+            "give the water of a nearby cast: --profile FILE",
+        ));
+    }
     let salinities: Vec<f64> = water.iter().map(|n| model.water.salinity_of_level_g_kg(n)).collect();
     let outside = water
         .iter()
