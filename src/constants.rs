@@ -22,6 +22,9 @@ pub const REFERENCE_PER_PRACTICAL_G_KG: f64 = STANDARD_ABSOLUTE_SALINITY_G_KG / 
 /// manual, appendix A.5).
 pub const BALTIC_RIVER_SALT_G_KG: f64 = 0.087;
 
+/// Heat capacity that defines Conservative Temperature, in J/(kg K) (TEOS-10 manual, eq. 3.3.3).
+pub const CONSERVATIVE_HEAT_CAPACITY_J_KG_K: f64 = 3_991.867_957_119_63;
+
 /// Temperature of 0 degC in K (ITS-90).
 pub const CELSIUS_ZERO_K: f64 = 273.15;
 
@@ -40,6 +43,9 @@ pub const STANDARD_GRAVITY_M_S2: f64 = 9.806_65;
 
 /// Density of the uniform water with which the ladder starts, in kg/m3 (common practice, no source).
 pub const UNIFORM_WATER_KG_M3: f64 = 1025.0;
+
+/// Density of fresh water in kg/m3, as depths of lakes and gauges are often reckoned (common practice, no source).
+pub const FRESH_WATER_KG_M3: f64 = 1000.0;
 
 /// m/s2 in a milligal.
 pub const M_S2_PER_MGAL: f64 = 1.0e-5;

@@ -3,8 +3,8 @@
 use super::profile::{Profile, ProfileError};
 use crate::constants::STANDARD_ABSOLUTE_SALINITY_G_KG;
 use crate::seawater::{
-    Composition, VALID_TO_DBAR, in_situ_temperature_degc, potential_temperature_degc, practical_salinity,
-    specific_volume_m3_kg,
+    Composition, EquationOfState, VALID_TO_DBAR, in_situ_temperature_degc, potential_temperature_degc,
+    practical_salinity,
 };
 
 /// Nodes farther apart than this are filled in between, so that the curvature of specific volume with
@@ -62,6 +62,18 @@ pub struct Water {
     salt: Salt,
     composition: Composition,
     continued_to_dbar: f64,
+    equation_of_state: EquationOfState,
+}
+
+/// Water at one level of the column as it is integrated, errors and composition included.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct WaterLevel {
+    /// Sea pressure in dbar.
+    pub pressure_dbar: f64,
+    /// Absolute Salinity in g/kg.
+    pub absolute_salinity_g_kg: f64,
+    /// In-situ temperature in degC (ITS-90).
+    pub temperature_degc: f64,
 }
 
 impl Water {
@@ -85,7 +97,13 @@ impl Water {
                 here: pair[1].pressure_dbar,
             });
         }
-        Ok(Self { nodes, salt, composition, continued_to_dbar })
+        Ok(Self {
+            nodes,
+            salt,
+            composition,
+            continued_to_dbar,
+            equation_of_state: EquationOfState::default(),
+        })
     }
 
     /// The standard ocean down to `to_dbar`: 35.165 04 g/kg and a Conservative Temperature, here the same as the
@@ -107,7 +125,19 @@ impl Water {
             salt: Salt::Absolute,
             composition: Composition::Reference,
             continued_to_dbar: 0.0,
+            equation_of_state: EquationOfState::default(),
         }
+    }
+
+    /// The same water with specific volume by another route.
+    #[must_use]
+    pub fn with_equation_of_state(self, equation_of_state: EquationOfState) -> Self {
+        Self { equation_of_state, ..self }
+    }
+
+    /// By which route its specific volume is computed.
+    pub fn equation_of_state(&self) -> EquationOfState {
+        self.equation_of_state
     }
 
     /// The observed levels.
@@ -181,30 +211,46 @@ impl Water {
     /// # Errors
     /// [`ProfileError`] when a level is not that of water (see [`Profile::new`]).
     pub fn profile(&self, surface_dbar: f64, shift: &WaterShift) -> Result<Profile, ProfileError> {
-        let mut builder = Builder::new(shift, self.nodes.len() + 2);
-        let first = &self.nodes[0];
-        let first_dbar = shift.pressure(first.pressure_dbar);
-        let mut above = Level {
-            pressure_dbar: first_dbar,
-            salinity_g_kg: self.absolute_salinity_g_kg(first, shift),
-            temperature_degc: first.temperature_degc + shift.temperature_degc,
+        let levels = self.levels(surface_dbar, shift);
+        let volume = |level: &WaterLevel| {
+            let beyond = level.pressure_dbar > VALID_TO_DBAR;
+            let ppm = if beyond { shift.volume_ppm_beyond } else { shift.volume_ppm };
+            let (s, t) = (level.absolute_salinity_g_kg, level.temperature_degc);
+            self.equation_of_state.specific_volume_m3_kg(s, t, level.pressure_dbar) * (1.0 + ppm * 1e-6)
         };
-        if surface_dbar < first_dbar {
-            builder.fill_from_surface(surface_dbar, &above);
+        let mut specific_volume_m3_kg: Vec<f64> = levels.iter().map(volume).collect();
+        if surface_dbar < shift.pressure(self.nodes[0].pressure_dbar) {
+            // The first level is the unsampled top. Specific volume runs linearly down to the next, which is
+            // known: twice the error at the top is the error of the mean.
+            let v = &mut specific_volume_m3_kg[0];
+            *v -= 2.0 * shift.gap_density_kg_m3 * *v * *v;
         }
-        builder.push(&above);
+        Profile::new(levels.iter().map(|l| l.pressure_dbar).collect(), specific_volume_m3_kg)
+    }
+
+    /// The water of that profile: the observed levels, with a level at the surface, levels between those that stand far apart and
+    /// the continuation below.
+    pub fn levels(&self, surface_dbar: f64, shift: &WaterShift) -> Vec<WaterLevel> {
+        let level = |node: &WaterNode| WaterLevel {
+            pressure_dbar: shift.pressure(node.pressure_dbar),
+            absolute_salinity_g_kg: self.absolute_salinity_g_kg(node, shift),
+            temperature_degc: node.temperature_degc + shift.temperature_degc,
+        };
+        let mut levels = Vec::with_capacity(self.nodes.len() + 2);
+        let mut above = level(&self.nodes[0]);
+        if surface_dbar < above.pressure_dbar {
+            // The unsampled water is as salty and as warm as the first level.
+            levels.push(WaterLevel { pressure_dbar: surface_dbar, ..above });
+        }
+        levels.push(above);
         for node in &self.nodes[1..] {
-            let here = Level {
-                pressure_dbar: shift.pressure(node.pressure_dbar),
-                salinity_g_kg: self.absolute_salinity_g_kg(node, shift),
-                temperature_degc: node.temperature_degc + shift.temperature_degc,
-            };
-            builder.bridge(&above, &here);
-            builder.push(&here);
+            let here = level(node);
+            bridge(&mut levels, &above, &here);
+            levels.push(here);
             above = here;
         }
-        builder.continue_adiabatically(&above, shift.pressure(self.continued_to_dbar));
-        Profile::new(builder.pressure_dbar, builder.specific_volume_m3_kg)
+        continue_adiabatically(&mut levels, &above, shift.pressure(self.continued_to_dbar));
+        levels
     }
 }
 
@@ -215,79 +261,45 @@ impl WaterShift {
     }
 }
 
-struct Level {
-    pressure_dbar: f64,
-    salinity_g_kg: f64,
-    temperature_degc: f64,
-}
-
-/// Collects the nodes of a profile from the levels of a column.
-struct Builder<'a> {
-    shift: &'a WaterShift,
-    pressure_dbar: Vec<f64>,
-    specific_volume_m3_kg: Vec<f64>,
-}
-
-impl<'a> Builder<'a> {
-    fn new(shift: &'a WaterShift, capacity: usize) -> Self {
+impl WaterLevel {
+    /// The level at `share` of the way in pressure from this one to `below`, salinity and temperature linear between them.
+    #[must_use]
+    pub fn towards(&self, below: &Self, share: f64) -> Self {
+        let between = |a: f64, b: f64| a + (b - a) * share;
         Self {
-            shift,
-            pressure_dbar: Vec::with_capacity(capacity),
-            specific_volume_m3_kg: Vec::with_capacity(capacity),
+            pressure_dbar: between(self.pressure_dbar, below.pressure_dbar),
+            absolute_salinity_g_kg: between(self.absolute_salinity_g_kg, below.absolute_salinity_g_kg),
+            temperature_degc: between(self.temperature_degc, below.temperature_degc),
         }
     }
+}
 
-    fn push(&mut self, level: &Level) {
-        let beyond = level.pressure_dbar > VALID_TO_DBAR;
-        let ppm = if beyond { self.shift.volume_ppm_beyond } else { self.shift.volume_ppm };
-        let error = 1.0 + ppm * 1e-6;
-        let v = specific_volume_m3_kg(level.salinity_g_kg, level.temperature_degc, level.pressure_dbar);
-        self.pressure_dbar.push(level.pressure_dbar);
-        self.specific_volume_m3_kg.push(v * error);
-    }
+/// Levels between two that stand far apart.
+fn bridge(levels: &mut Vec<WaterLevel>, above: &WaterLevel, below: &WaterLevel) {
+    let pieces = ((below.pressure_dbar - above.pressure_dbar) / WIDEST_STEP_DBAR - 1e-9).ceil();
+    levels.extend((1..pieces as usize).map(|piece| above.towards(below, piece as f64 / pieces)));
+}
 
-    /// The unsampled water above the first level, as salty and as warm as that level.
-    fn fill_from_surface(&mut self, surface_dbar: f64, first: &Level) {
-        self.push(&Level { pressure_dbar: surface_dbar, ..*first });
-        // Specific volume runs linearly down to the first level, which is known: twice the error at the
-        // top is the error of the mean.
-        let v = &mut self.specific_volume_m3_kg[0];
-        *v -= 2.0 * self.shift.gap_density_kg_m3 * *v * *v;
+/// Water below the last level: its salinity, its entropy.
+fn continue_adiabatically(levels: &mut Vec<WaterLevel>, last: &WaterLevel, to_dbar: f64) {
+    let gap = to_dbar - last.pressure_dbar;
+    if gap <= 0.0 {
+        return;
     }
-
-    /// Salinity and temperature linear between two levels that stand far apart.
-    fn bridge(&mut self, above: &Level, below: &Level) {
-        let pieces = ((below.pressure_dbar - above.pressure_dbar) / WIDEST_STEP_DBAR - 1e-9).ceil();
-        for piece in 1..pieces as usize {
-            let share = piece as f64 / pieces;
-            let between = |a: f64, b: f64| a + (b - a) * share;
-            self.push(&Level {
-                pressure_dbar: between(above.pressure_dbar, below.pressure_dbar),
-                salinity_g_kg: between(above.salinity_g_kg, below.salinity_g_kg),
-                temperature_degc: between(above.temperature_degc, below.temperature_degc),
-            });
-        }
-    }
-
-    /// Water below the last level: its salinity, its entropy.
-    fn continue_adiabatically(&mut self, last: &Level, to_dbar: f64) {
-        let gap = to_dbar - last.pressure_dbar;
-        if gap <= 0.0 {
-            return;
-        }
-        let theta = potential_temperature_degc(last.salinity_g_kg, last.temperature_degc, last.pressure_dbar);
-        let pieces = (gap / WIDEST_STEP_DBAR).ceil();
-        for piece in 1..=pieces as usize {
-            let pressure_dbar = last.pressure_dbar + gap * piece as f64 / pieces;
-            let temperature_degc = in_situ_temperature_degc(last.salinity_g_kg, theta, pressure_dbar);
-            self.push(&Level { pressure_dbar, salinity_g_kg: last.salinity_g_kg, temperature_degc });
-        }
-    }
+    let salinity = last.absolute_salinity_g_kg;
+    let theta = potential_temperature_degc(salinity, last.temperature_degc, last.pressure_dbar);
+    let pieces = (gap / WIDEST_STEP_DBAR).ceil();
+    levels.extend((1..=pieces as usize).map(|piece| {
+        let pressure_dbar = last.pressure_dbar + gap * piece as f64 / pieces;
+        let temperature_degc = in_situ_temperature_degc(salinity, theta, pressure_dbar);
+        WaterLevel { pressure_dbar, temperature_degc, ..*last }
+    }));
 }
 
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::seawater::specific_volume_m3_kg;
 
     fn two_levels() -> Water {
         let nodes = vec![

@@ -14,6 +14,9 @@ const C: [f64; 5] = [0.676_609_7, 2.005_64e-2, 1.104_259e-4, -6.969_8e-7, 1.003_
 const D: [f64; 4] = [3.426e-2, 4.464e-4, 4.215e-1, -3.107e-3];
 const E: [f64; 3] = [2.070e-5, -6.370e-10, 3.989e-15];
 
+/// `R_t` beyond which no conductivity is looked for: brine is saturated near 5.
+const LARGEST_RATIO: f64 = 100.0;
+
 /// Practical Salinity where the extension of Hill et al. takes over.
 const HILL_BELOW: f64 = 2.0;
 
@@ -34,6 +37,11 @@ pub fn practical_salinity(conductivity_ms_cm: f64, temperature_degc: f64, pressu
         + p * (E[0] + p * (E[1] + p * E[2]))
             / (1.0 + t68 * (D[0] + t68 * D[1]) + (D[2] + t68 * D[3]) * ratio);
     let r_t = ratio / (pressure_ratio * temperature_ratio(t68));
+    salinity_of_ratio(r_t, t68)
+}
+
+/// Practical Salinity from `R_t`, by the scale or its extension.
+fn salinity_of_ratio(r_t: f64, t68: f64) -> f64 {
     if r_t.is_nan() {
         return f64::NAN;
     }
@@ -42,6 +50,73 @@ pub fn practical_salinity(conductivity_ms_cm: f64, temperature_degc: f64, pressu
     }
     let salinity = scale_1978(r_t, t68);
     if salinity < HILL_BELOW { below_two(salinity, r_t, t68) } else { salinity }
+}
+
+/// Conductivity in mS/cm of water of a Practical Salinity, the inverse of [`practical_salinity`] over its whole range.
+///
+/// `R_t` is found by search (Practical Salinity rises with it); `R` follows from `R_t` in closed form, since `R_p` is a ratio
+/// of two straight lines in `R` (UNESCO 44, eq. 4). Returns to the Practical Salinity within 1e-13 (test
+/// `seawater_properties`); 0 for a salinity of zero or below, NaN for what is not
+/// finite or has no answer.
+pub fn conductivity_ms_cm(practical_salinity: f64, temperature_degc: f64, pressure_dbar: f64) -> f64 {
+    if !(practical_salinity + temperature_degc + pressure_dbar).is_finite() {
+        return f64::NAN;
+    }
+    if practical_salinity <= 0.0 {
+        return 0.0;
+    }
+    let (t68, p) = (temperature_degc * T68_PER_T90, pressure_dbar);
+    let at_surface = ratio_of_salinity(practical_salinity, t68) * temperature_ratio(t68);
+    // R = q (1 + a / (b + d R)) with q = R_t r_t, solved for R without loss of digits.
+    let a = p * (E[0] + p * (E[1] + p * E[2]));
+    let b = 1.0 + t68 * (D[0] + t68 * D[1]);
+    let d = D[2] + t68 * D[3];
+    let half = 0.5 * (b - d * at_surface);
+    let root = (half * half + d * at_surface * (a + b)).sqrt();
+    let ratio = if half > 0.0 { at_surface * (a + b) / (half + root) } else { (root - half) / d };
+    // A temperature that no sea has can turn the polynomials negative.
+    if ratio > 0.0 { ratio * CONDUCTIVITY_35_15_0_MS_CM } else { f64::NAN }
+}
+
+/// `R_t` that gives a Practical Salinity above zero: the false position inside a bracket, an end that stays for the
+/// second time being halved (the Illinois rule), which takes about eight steps.
+fn ratio_of_salinity(practical_salinity: f64, t68: f64) -> f64 {
+    let miss = |r_t: f64| salinity_of_ratio(r_t, t68) - practical_salinity;
+    let (mut low, mut miss_low) = (0.0, -practical_salinity);
+    let mut high = practical_salinity / 35.0 + 0.01;
+    let mut miss_high = miss(high);
+    while miss_high < 0.0 {
+        if high > LARGEST_RATIO {
+            return f64::NAN;
+        }
+        (low, miss_low) = (high, miss_high);
+        high *= 2.0;
+        miss_high = miss(high);
+    }
+    let (mut r_t, mut before, mut rose) = (high, f64::INFINITY, None);
+    // The last digit is reached long before the count runs out.
+    for _ in 0..100 {
+        if (r_t - before).abs() <= f64::EPSILON * r_t {
+            break;
+        }
+        before = r_t;
+        r_t = (low * miss_high - high * miss_low) / (miss_high - miss_low);
+        let here = miss(r_t);
+        if here < 0.0 {
+            (low, miss_low) = (r_t, here);
+            if rose.replace(true) == Some(true) {
+                miss_high *= 0.5;
+            }
+        } else if here > 0.0 {
+            (high, miss_high) = (r_t, here);
+            if rose.replace(false) == Some(false) {
+                miss_low *= 0.5;
+            }
+        } else {
+            break;
+        }
+    }
+    r_t
 }
 
 /// `r_t = C(35, t, 0) / C(35, 15, 0)` (eq. 3).

@@ -9,10 +9,12 @@ import make_atlas_points
 import make_check_casts
 import make_cruise_casts
 import make_density
+import make_equation_of_state
 import make_gravity
 import make_gum
 import make_iapws
 import make_orders_of_magnitude
+import make_polynomial
 import make_practical_salinity
 import make_student_t
 import make_unesco44
@@ -28,6 +30,8 @@ MAKERS = [
     make_check_casts,
     make_orders_of_magnitude,
     make_gum,
+    make_polynomial,
+    make_equation_of_state,
 ]
 
 if __name__ == "__main__":
