@@ -5,7 +5,7 @@ use crate::column::{Column, ProfileError, Salt, Water, WaterNode, bin_means, mea
 use crate::depth::{Deepest, Model, Place, Rung, ladder};
 use crate::gravity::SurfaceGravity;
 use crate::log::{Flag, Log, LogError, PressureKind};
-use crate::seawater::{Composition, VALID_TO_DBAR, density_kg_m3};
+use crate::seawater::{Composition, VALID_TO_DBAR};
 use crate::settings::{LegChoice, Settings};
 use crate::uncertainty::{Budget, DepthUncertainty, Evidence, SurveyOrder, WaterOrigin, survey_orders};
 use crate::warning::Warning;
@@ -116,13 +116,15 @@ impl Reduction {
             water_level_m: settings.water_level_m.unwrap_or(0.0),
             reference_below_sensor_m: settings.reference_below_sensor_m.unwrap_or(0.0),
         };
-        let model = Model { water: chosen.water, place };
+        let eos = settings.equation_of_state;
+        let model = Model { water: chosen.water.with_equation_of_state(eos), place };
+        let other_leg = chosen.other_leg.map(|water| water.with_equation_of_state(eos));
         let column = model.column().map_err(not_water)?;
         let evidence = Evidence {
             tare: &cast.tare,
             noise: &cast.noise,
             origin: chosen.origin,
-            other_leg: chosen.other_leg.as_ref(),
+            other_leg: other_leg.as_ref(),
             pressure_follows_air: cast.tare.follows_air() || cast.pressure_kind == PressureKind::Gauge,
             air_pressure_given: settings.air_pressure_hpa.is_some(),
             composition_known: *model.water.composition() != Composition::Reference,
@@ -215,20 +217,22 @@ impl Reduction {
             return f64::NAN;
         }
         let p = self.cast.pressure_dbar[i];
-        match &self.log.temperature {
-            Some(t) if !self.cast.practical_salinity.is_empty() => {
-                if !self.cast.water_usable(i) {
-                    return f64::NAN;
-                }
-                let s = self.composition().absolute_salinity_g_kg(self.cast.practical_salinity[i], p);
-                density_kg_m3(s, t.values[i], p)
-            }
-            _ => self.column.specific_volume_m3_kg(p).recip(),
+        if self.log.temperature.is_none() || self.cast.practical_salinity.is_empty() {
+            return self.column.specific_volume_m3_kg(p).recip();
         }
+        self.water_of_sample(i).map_or(f64::NAN, |(_, absolute, temperature)| {
+            self.model.water.equation_of_state().density_kg_m3(absolute, temperature, p)
+        })
     }
 
-    fn composition(&self) -> &Composition {
-        self.model.water.composition()
+    /// Practical Salinity, Absolute Salinity in g/kg and temperature in degC of sample `i`, where the log has them, the sample is
+    /// in the water and they can be trusted.
+    pub fn water_of_sample(&self, i: usize) -> Option<(f64, f64, f64)> {
+        let temperature = self.log.temperature.as_ref()?.values[i];
+        let practical = *self.cast.practical_salinity.get(i)?;
+        let p = self.cast.pressure_dbar[i];
+        let absolute = self.model.water.composition().absolute_salinity_g_kg(practical, p);
+        self.cast.water_usable(i).then_some((practical, absolute, temperature))
     }
 
     /// Seconds spent within a metre of the deepest depth, when the log tells time.

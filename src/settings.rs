@@ -4,7 +4,7 @@ use crate::cast::{CastSettings, TareChoice};
 use crate::column::Water;
 use crate::gravity::SurfaceGravity;
 use crate::log::PressureKind;
-use crate::seawater::Composition;
+use crate::seawater::{Composition, EquationOfState};
 use crate::uncertainty::{Supplied, Term};
 use std::collections::BTreeMap;
 
@@ -49,6 +49,8 @@ pub struct Settings {
     pub leg: LegChoice,
     /// Composition of the salt; `None` takes the atlas's at the position, where longitude is known too.
     pub composition: Option<Composition>,
+    /// Formula of specific volume.
+    pub equation_of_state: EquationOfState,
     /// Water of another cast, to be used in place of the log's.
     pub profile: Option<OtherCast>,
     /// Gravity at the surface against normal gravity.
@@ -79,6 +81,7 @@ impl Default for Settings {
             tare: TareChoice::Auto,
             leg: LegChoice::Down,
             composition: None,
+            equation_of_state: EquationOfState::Gibbs,
             profile: None,
             surface_gravity: None,
             gradient_eotvos: None,

@@ -250,6 +250,83 @@ fn standard_input_is_a_log() {
 }
 
 #[test]
+fn further_columns_stand_behind_in_the_order_asked_for() {
+    let log = path("lander-dive.csv");
+    let with = "sound_speed_m_s,gravity_m_s2,practical_salinity,mean_sound_speed_m_s,gravity_m_s2";
+    let args = [
+        "reduce",
+        &log,
+        "--lat",
+        "-19.4",
+        "--lon",
+        "-131.7",
+        "--air-pressure",
+        "1009.3",
+        "-q",
+        "--with",
+        with,
+    ];
+    let out = text(&seaplumb(&args).stdout);
+    let mut lines = out.lines();
+    assert!(
+        lines
+            .next()
+            .expect("a header")
+            .ends_with(",leg,flag,sound_speed_m_s,gravity_m_s2,practical_salinity,mean_sound_speed_m_s")
+    );
+    let rows: Vec<Vec<&str>> = lines.map(|l| l.split(',').collect()).collect();
+    // On deck the sample tells nothing of water.
+    assert_eq!((rows[0][7], rows[0][9]), ("", ""));
+    let number = |row: usize, column: usize| rows[row][column].parse::<f64>().expect("a number");
+    let deepest = 13_860;
+    // What the demo's script put in at the bottom: 34.69 (demo-data/make_ocean.py); sound speed and gravity by gsw 3.6.23
+    // and the numbers of docs/method.md at about that depth.
+    assert!((number(deepest, 9) - 34.69).abs() < 0.005);
+    assert!((number(deepest, 7) - 1651.8).abs() < 0.5);
+    assert!((number(deepest, 8) - 9.810_08).abs() < 2e-5);
+    assert!(number(deepest, 10) < number(deepest, 7));
+    let json = seaplumb(&[&args[..], &["--format", "json"]].concat()).stdout;
+    let json: serde_json::Value = serde_json::from_slice(&json).expect("JSON");
+    assert_eq!(json["schema"], "seaplumb.reduce/1");
+    let samples = &json["casts"][0]["samples"];
+    assert_eq!(samples["practical_salinity"][deepest].as_f64(), Some(number(deepest, 9)));
+    assert_eq!(samples["practical_salinity"][0], serde_json::Value::Null);
+}
+
+#[test]
+fn both_equations_of_state_agree() {
+    let depth = |eos: &str| {
+        let log = path("lander-dive.csv");
+        let args =
+            ["deepest", &log, "--lat", "-19.4", "--lon", "-131.7", "--format", "json", "-q", "--eos", eos];
+        let json: serde_json::Value = serde_json::from_slice(&seaplumb(&args).stdout).expect("JSON");
+        json["casts"][0]["deepest"]["depth_m"].as_f64().expect("m")
+    };
+    let (gibbs, polynomial) = (depth("gibbs"), depth("polynomial"));
+    assert!(gibbs != polynomial && (gibbs - polynomial).abs() < 1e-3, "{gibbs} {polynomial}");
+}
+
+#[test]
+fn a_position_without_atlas_widens_the_term() {
+    let term = |lat: &str, lon: &[&str]| {
+        let log = path("salinity-cast.csv");
+        let args = [&["deepest", &log, "--format", "json", "-q", "--lat", lat], lon].concat();
+        let json: serde_json::Value = serde_json::from_slice(&seaplumb(&args).stdout).expect("JSON");
+        let cast = json["casts"][0].clone();
+        let budget = cast["budget"].as_array().expect("a budget").clone();
+        let term = budget.into_iter().find(|t| t["term"] == "salinity_composition").expect("the term");
+        (term["standard_uncertainty"].as_f64().expect("u"), cast["warnings"].to_string())
+    };
+    assert_eq!(term("-19.4", &["--lon", "-131.7"]).0, 0.005);
+    assert_eq!(term("-19.4", &["--lon", "228.3"]).0, 0.005);
+    assert_eq!(term("-19.4", &[]).0, 0.015);
+    // The middle of Asia.
+    let (u, warnings) = term("48", &["--lon", "85"]);
+    assert_eq!(u, 0.015);
+    says(&warnings, &["composition_not_known"]);
+}
+
+#[test]
 fn help_carries_the_caution_and_examples() {
     let help = text(&seaplumb(&["--help"]).stdout);
     says(&help, &["Not for navigation", "life support", "Exit status", "reduce", "deepest"]);

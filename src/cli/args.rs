@@ -48,6 +48,9 @@ pub enum Command {
 /// `seaplumb reduce`.
 #[derive(Debug, Args)]
 pub struct ReduceArgs {
+    /// Further columns, by name, with commas between them
+    #[arg(long, value_enum, value_name = "LIST", value_delimiter = ',', help_heading = "Output")]
+    pub with: Vec<ExtraArg>,
     /// Form of the result
     #[arg(long, value_enum, default_value_t = SeriesFormat::Csv, help_heading = "Output")]
     pub format: SeriesFormat,
@@ -74,6 +77,38 @@ pub enum SeriesFormat {
     Csv,
     /// One array per column
     Json,
+}
+
+/// Further columns of a depth series.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+#[value(rename_all = "snake_case")]
+pub enum ExtraArg {
+    /// Practical Salinity
+    PracticalSalinity,
+    /// Absolute Salinity
+    #[value(name = "absolute_salinity_g_kg")]
+    AbsoluteSalinity,
+    /// Conservative Temperature
+    #[value(name = "conservative_temperature_degC")]
+    ConservativeTemperature,
+    /// Sound speed at the sample
+    #[value(name = "sound_speed_m_s")]
+    SoundSpeed,
+    /// Its travel-time mean from the sea surface down, what an echo sounder needs
+    #[value(name = "mean_sound_speed_m_s")]
+    MeanSoundSpeed,
+    /// Gravity at the sample
+    #[value(name = "gravity_m_s2")]
+    Gravity,
+}
+
+/// Formulas of specific volume.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub enum EosArg {
+    /// The full Gibbs function, IAPWS-09 with IAPWS-08
+    Gibbs,
+    /// The 75-term polynomial fitted to it
+    Polynomial,
 }
 
 /// Forms of a deepest depth.
@@ -161,6 +196,10 @@ pub struct SharedArgs {
     /// What the salt is made of
     #[arg(long, value_enum, default_value_t = CompositionArg::Atlas, help_heading = "Water")]
     pub composition: CompositionArg,
+
+    /// Formula of specific volume
+    #[arg(long, value_enum, default_value_t = EosArg::Gibbs, help_heading = "Water")]
+    pub eos: EosArg,
 
     /// Air pressure at the sea surface [default: 1013.25]
     #[arg(long, value_name = "HPA", help_heading = "Surface and datum")]

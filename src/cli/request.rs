@@ -1,10 +1,11 @@
 //! From what was typed to what is meant.
 
-use super::args::{CompositionArg, LegArg, PressureArg, SharedArgs};
+use super::args::{CompositionArg, EosArg, ExtraArg, LegArg, PressureArg, SharedArgs};
 use crate::cast::TareChoice;
 use crate::gravity::SurfaceGravity;
 use crate::log::{ColumnChoice, PressureKind, ReadOptions};
-use crate::seawater::Composition;
+use crate::report::Extra;
+use crate::seawater::{Composition, EquationOfState};
 use crate::settings::{LegChoice, Settings};
 use crate::uncertainty::{Basis, Supplied, Term};
 use std::collections::BTreeMap;
@@ -61,6 +62,10 @@ pub(super) fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
             CompositionArg::Atlas => None,
             CompositionArg::Reference => Some(Composition::Reference),
         },
+        equation_of_state: match args.eos {
+            EosArg::Gibbs => EquationOfState::Gibbs,
+            EosArg::Polynomial => EquationOfState::Polynomial,
+        },
         surface_gravity: anomaly
             .map(SurfaceGravity::FreeAirAnomaly)
             .or(disturbance.map(SurfaceGravity::Disturbance)),
@@ -73,6 +78,25 @@ pub(super) fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
         coverage_probability: coverage.unwrap_or(0.95),
         ..Settings::default()
     })
+}
+
+/// Further columns, each once.
+pub(super) fn extras(args: &[ExtraArg]) -> Vec<Extra> {
+    let mut columns = Vec::new();
+    for arg in args {
+        let column = match arg {
+            ExtraArg::PracticalSalinity => Extra::PracticalSalinity,
+            ExtraArg::AbsoluteSalinity => Extra::AbsoluteSalinity,
+            ExtraArg::ConservativeTemperature => Extra::ConservativeTemperature,
+            ExtraArg::SoundSpeed => Extra::SoundSpeed,
+            ExtraArg::MeanSoundSpeed => Extra::MeanSoundSpeed,
+            ExtraArg::Gravity => Extra::Gravity,
+        };
+        if !columns.contains(&column) {
+            columns.push(column);
+        }
+    }
+    columns
 }
 
 fn tare(text: &str) -> Result<TareChoice, CallError> {

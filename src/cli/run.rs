@@ -51,8 +51,8 @@ pub fn run(cli: &Cli, out: &mut dyn Write, notes: &mut dyn Write) -> Result<Exit
     match &cli.command {
         Command::Reduce(args) => {
             let mut report: Box<dyn Report> = match args.format {
-                SeriesFormat::Csv => Box::new(SeriesCsv),
-                SeriesFormat::Json => Box::<SeriesJson>::default(),
+                SeriesFormat::Csv => Box::new(SeriesCsv { with: request::extras(&args.with) }),
+                SeriesFormat::Json => Box::new(SeriesJson::with(request::extras(&args.with))),
             };
             reduce_all(&args.shared, report.as_mut(), true, out, notes)
         }

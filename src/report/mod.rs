@@ -3,6 +3,7 @@
 mod deepest_csv;
 mod deepest_json;
 mod deepest_text;
+mod extra;
 mod number;
 mod series_csv;
 mod series_json;
@@ -10,6 +11,7 @@ mod series_json;
 pub use deepest_csv::DeepestCsv;
 pub use deepest_json::DeepestJson;
 pub use deepest_text::DeepestText;
+pub use extra::Extra;
 pub use series_csv::SeriesCsv;
 pub use series_json::SeriesJson;
 

@@ -1,6 +1,7 @@
 //! Depth at every sample, as comma separated text.
 
 use super::Report;
+use super::extra::{Extra, Extras};
 use super::number::{push_fixed, push_trimmed};
 use crate::reduction::Reduction;
 use std::io::{self, Write};
@@ -8,9 +9,12 @@ use std::io::{self, Write};
 /// One row per sample of the log, in its order.
 ///
 /// Columns: `time_s`, `time` (only when the log tells absolute time), `pressure_dbar`, `depth_m`, `u_depth_m`,
-/// `density_kg_m3`, `leg`, `flag`. What is not known is empty.
+/// `density_kg_m3`, `leg`, `flag`, and the further columns asked for. What is not known is empty.
 #[derive(Debug, Default)]
-pub struct SeriesCsv;
+pub struct SeriesCsv {
+    /// Further columns.
+    pub with: Vec<Extra>,
+}
 
 /// Rows are handed on in pieces of about this many bytes.
 const PIECE: usize = 1 << 16;
@@ -30,7 +34,12 @@ impl Report for SeriesCsv {
         if start.is_some() {
             out.write_all(b"time,")?;
         }
-        out.write_all(b"pressure_dbar,depth_m,u_depth_m,density_kg_m3,leg,flag\n")?;
+        out.write_all(b"pressure_dbar,depth_m,u_depth_m,density_kg_m3,leg,flag")?;
+        let extras = Extras::new(&self.with, reduction);
+        for column in extras.columns() {
+            write!(out, ",{}", column.name())?;
+        }
+        out.write_all(b"\n")?;
         let mut piece = Vec::with_capacity(PIECE + 200);
         for i in 0..reduction.len() {
             let sample = reduction.sample(i);
@@ -50,7 +59,12 @@ impl Report for SeriesCsv {
                 piece.push(b',');
             }
             piece.extend_from_slice(sample.leg.name().as_bytes());
-            piece.extend_from_slice(&[b',', b'0' + sample.flag.code(), b'\n']);
+            piece.extend_from_slice(&[b',', b'0' + sample.flag.code()]);
+            for column in extras.columns() {
+                piece.push(b',');
+                push_fixed(&mut piece, extras.value(column, i), column.decimals());
+            }
+            piece.push(b'\n');
             if piece.len() > PIECE {
                 out.write_all(&piece)?;
                 piece.clear();

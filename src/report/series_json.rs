@@ -1,18 +1,28 @@
 //! Depth at every sample, as JSON: one array per column.
 
 use super::Report;
+use super::extra::{Extra, Extras};
 use super::number::rounded;
 use super::series_csv::absolute;
 use crate::reduction::{Reduction, Sample};
 use crate::warning::Warning;
 use serde::Serialize;
+use std::collections::BTreeMap;
 use std::io::{self, Write};
 
 /// `{"schema": "seaplumb.reduce/1", "casts": [...]}`: each cast with the columns of the CSV as arrays; null for what is not
 /// known.
 #[derive(Debug, Default)]
 pub struct SeriesJson {
+    with: Vec<Extra>,
     written: bool,
+}
+
+impl SeriesJson {
+    /// With further columns.
+    pub fn with(with: Vec<Extra>) -> Self {
+        Self { with, written: false }
+    }
 }
 
 #[derive(Serialize)]
@@ -37,10 +47,13 @@ struct Columns {
     density_kg_m3: Vec<f64>,
     leg: Vec<&'static str>,
     flag: Vec<u8>,
+    #[serde(flatten)]
+    with: BTreeMap<&'static str, Vec<f64>>,
 }
 
 impl Columns {
-    fn new(reduction: &Reduction) -> Self {
+    fn new(reduction: &Reduction, with: &[Extra]) -> Self {
+        let extras = Extras::new(with, reduction);
         let samples: Vec<Sample> = (0..reduction.len()).map(|i| reduction.sample(i)).collect();
         let column = |get: fn(&Sample) -> f64, decimals| -> Vec<f64> {
             samples.iter().map(|s| rounded(get(s), decimals)).collect()
@@ -57,6 +70,13 @@ impl Columns {
             density_kg_m3: column(|s| s.density_kg_m3, 4),
             leg: samples.iter().map(|s| s.leg.name()).collect(),
             flag: samples.iter().map(|s| s.flag.code()).collect(),
+            with: extras
+                .columns()
+                .map(|column| {
+                    let value = |i| rounded(extras.value(column, i), column.decimals() as i32);
+                    (column.name(), (0..samples.len()).map(value).collect())
+                })
+                .collect(),
         }
     }
 }
@@ -82,7 +102,7 @@ impl Report for SeriesJson {
             latitude: reduction.latitude_deg,
             longitude: reduction.longitude_deg,
             datum: &reduction.datum,
-            samples: Columns::new(reduction),
+            samples: Columns::new(reduction, &self.with),
             warnings: &reduction.warnings,
         };
         serde_json::to_writer(out, &cast).map_err(io::Error::from)

@@ -148,6 +148,9 @@ impl Budget {
     }
 }
 
+/// From so many degrees of freedom on, Student's t is that of infinitely many to six digits.
+const AS_GOOD_AS_INFINITE: f64 = 1.0e7;
+
 /// Combines terms: `u_c^2 = sum c_i^2 u_i^2 + 2 sum r_ij c_i u_i c_j u_j` (JCGM 100:2008, eq. 16), effective degrees of
 /// freedom `nu = u_c^4 / sum (c_i u_i)^4 / nu_i` (eq. G.2b), truncated to an integer as G.4.1 advises when small, and the
 /// coverage factor from Student's distribution (G.3.2).
@@ -163,7 +166,8 @@ pub fn combine(
     let variance = (own + shared).max(0.0);
     let fourth: f64 =
         terms.iter().filter_map(|t| t.degrees_of_freedom.map(|nu| t.contribution_m.powi(4) / nu)).sum();
-    let effective = (fourth > 0.0).then(|| variance * variance / fourth).filter(|nu| nu.is_finite());
+    let effective =
+        (fourth > 0.0).then(|| variance * variance / fourth).filter(|nu| *nu < AS_GOOD_AS_INFINITE);
     for term in &mut terms {
         term.share = if variance > 0.0 { term.contribution_m.powi(2) / variance } else { 0.0 };
     }
