@@ -64,7 +64,7 @@ pub fn unesco_44_depth_m(pressure_dbar: f64, latitude_deg: f64) -> f64 {
 /// `z = (1 - c1) p - c2 p^2`, `c1 = (5.92 + 5.25 sin2 phi) 1e-3`, `c2 = 2.21e-6` (Saunders 1981, J. Phys. Oceanogr. 11,
 /// 573-574).
 ///
-/// Within 0.2 m of [`unesco_44_depth_m`] down to 6 000 dbar; 6 m short of it at 10 000 dbar, where it was not meant to be used.
+/// Within 0.3 m of [`unesco_44_depth_m`] down to 5 000 dbar and 0.6 m to 6 000 dbar; 5.7 to 6.9 m short of it at 10 000 dbar.
 pub fn saunders_1981_depth_m(pressure_dbar: f64, latitude_deg: f64) -> f64 {
     let c1 = (5.92 + 5.25 * sin2(latitude_deg)) * 1e-3;
     let c2 = 2.21e-6;

@@ -56,6 +56,7 @@ pub(super) fn scaled(
 /// `absolute_salinity_g_kg` 0 to 42, `temperature_degc` -6 to 40, `pressure_dbar` 0 to
 /// [`VALID_TO_DBAR`]; agrees with the reference TEOS-10 library to 1e-6 kg/m3 in density up to
 /// 11 500 dbar (test `seawater_reference`).
+#[inline]
 pub fn specific_volume_m3_kg(absolute_salinity_g_kg: f64, temperature_degc: f64, pressure_dbar: f64) -> f64 {
     let (x, tau, pi) = scaled(absolute_salinity_g_kg, temperature_degc, pressure_dbar);
     nested_in(pi, by_pressure(x, tau)) / PRESSURE_SCALE_PA
@@ -75,6 +76,7 @@ pub fn entropy_j_kg_k(absolute_salinity_g_kg: f64, temperature_degc: f64, pressu
 
 /// Speed of sound in m/s: `c = v sqrt(g_tt / (g_tp^2 - g_tt g_pp))` (TEOS-10 manual, eq. 2.17.1). Ranges as
 /// [`specific_volume_m3_kg`]; agrees with the reference TEOS-10 library to 1e-8 m/s (test `seawater_reference`).
+#[inline]
 pub fn sound_speed_m_s(absolute_salinity_g_kg: f64, temperature_degc: f64, pressure_dbar: f64) -> f64 {
     let (x, tau, pi) = scaled(absolute_salinity_g_kg, temperature_degc, pressure_dbar);
     let rows = by_pressure(x, Dual::variable(tau));

@@ -67,103 +67,60 @@ const fn enthalpy_row<const N: usize>(i: usize) -> [f64; N] {
     h
 }
 
-/// `r!(tau, by, i, k, N)`: the polynomial in `tau` that stands before `x^i pi^k`.
-macro_rules! r {
-    ($tau:ident, $by:ident, $i:literal, $k:literal, $n:literal) => {
-        nested($tau, &const { row::<$n>(By::$by, $i, $k) })
+/// `level!(x, tau, by, k: 0: n, 2: n, ...)`: all that stands before `pi^k`, with `n` powers of `tau` before each `x^i`;
+/// `i` runs from 2 without a gap, `i = 0` is the water.
+macro_rules! level {
+    ($x:ident, $tau:ident, $by:ident, $k:literal: 0: $water:literal) => {
+        nested($tau, &const { row::<$water>(By::$by, 0, $k) })
+    };
+    ($x:ident, $tau:ident, $by:ident, $k:literal: 0: $water:literal, $($i:literal: $n:literal),+) => {
+        nested($tau, &const { row::<$water>(By::$by, 0, $k) })
+            + nested_in($x, [$(nested($tau, &const { row::<$n>(By::$by, $i, $k) })),+]) * ($x * $x)
     };
 }
 
 /// Coefficients of `pi^0, pi^1, ...` of `dg/dpi` in J/kg, from `x` and `tau`.
 #[inline(always)]
 pub(super) fn by_pressure<T: Real>(x: f64, tau: T) -> [T; 6] {
-    let xx = x * x;
     [
-        r!(tau, Pressure, 0, 0, 8)
-            + nested_in(
-                x,
-                [
-                    r!(tau, Pressure, 2, 0, 5),
-                    r!(tau, Pressure, 3, 0, 5),
-                    r!(tau, Pressure, 4, 0, 2),
-                    r!(tau, Pressure, 5, 0, 1),
-                ],
-            ) * xx,
-        r!(tau, Pressure, 0, 1, 7)
-            + nested_in(
-                x,
-                [r!(tau, Pressure, 2, 1, 5), r!(tau, Pressure, 3, 1, 3), r!(tau, Pressure, 4, 1, 1)],
-            ) * xx,
-        r!(tau, Pressure, 0, 2, 7)
-            + nested_in(
-                x,
-                [r!(tau, Pressure, 2, 2, 5), r!(tau, Pressure, 3, 2, 3), r!(tau, Pressure, 4, 2, 1)],
-            ) * xx,
-        r!(tau, Pressure, 0, 3, 6)
-            + nested_in(x, [r!(tau, Pressure, 2, 3, 4), r!(tau, Pressure, 3, 3, 1)]) * xx,
-        r!(tau, Pressure, 0, 4, 4) + r!(tau, Pressure, 2, 4, 3) * xx,
-        r!(tau, Pressure, 0, 5, 1),
+        level!(x, tau, Pressure, 0: 0: 8, 2: 5, 3: 5, 4: 2, 5: 1),
+        level!(x, tau, Pressure, 1: 0: 7, 2: 5, 3: 3, 4: 1),
+        level!(x, tau, Pressure, 2: 0: 7, 2: 5, 3: 3, 4: 1),
+        level!(x, tau, Pressure, 3: 0: 6, 2: 4, 3: 1),
+        level!(x, tau, Pressure, 4: 0: 4, 2: 3),
+        level!(x, tau, Pressure, 5: 0: 1),
     ]
 }
 
 /// Coefficients of `pi^0, pi^1, ...` of `-dg/dtau` in J/kg but for the term `x^2 ln x`, which depends on `x` alone.
 #[inline(always)]
 pub(super) fn by_temperature<T: Real>(x: f64, tau: T) -> [T; 6] {
-    let xx = x * x;
     [
         by_temperature_at_surface(x, tau),
-        r!(tau, Temperature, 0, 1, 7)
-            + nested_in(
-                x,
-                [r!(tau, Temperature, 2, 1, 4), r!(tau, Temperature, 3, 1, 4), r!(tau, Temperature, 4, 1, 1)],
-            ) * xx,
-        r!(tau, Temperature, 0, 2, 6)
-            + nested_in(x, [r!(tau, Temperature, 2, 2, 4), r!(tau, Temperature, 3, 2, 2)]) * xx,
-        r!(tau, Temperature, 0, 3, 6)
-            + nested_in(x, [r!(tau, Temperature, 2, 3, 4), r!(tau, Temperature, 3, 3, 2)]) * xx,
-        r!(tau, Temperature, 0, 4, 5) + r!(tau, Temperature, 2, 4, 3) * xx,
-        r!(tau, Temperature, 0, 5, 3) + r!(tau, Temperature, 2, 5, 2) * xx,
+        level!(x, tau, Temperature, 1: 0: 7, 2: 4, 3: 4, 4: 1),
+        level!(x, tau, Temperature, 2: 0: 6, 2: 4, 3: 2),
+        level!(x, tau, Temperature, 3: 0: 6, 2: 4, 3: 2),
+        level!(x, tau, Temperature, 4: 0: 5, 2: 3),
+        level!(x, tau, Temperature, 5: 0: 3, 2: 2),
     ]
 }
 
 /// The first of the coefficients of [`by_temperature`]: all that is left at zero sea pressure.
 #[inline(always)]
 pub(super) fn by_temperature_at_surface<T: Real>(x: f64, tau: T) -> T {
-    r!(tau, Temperature, 0, 0, 7)
-        + nested_in(
-            x,
-            [
-                r!(tau, Temperature, 2, 0, 6),
-                r!(tau, Temperature, 3, 0, 4),
-                r!(tau, Temperature, 4, 0, 5),
-                r!(tau, Temperature, 5, 0, 1),
-                r!(tau, Temperature, 6, 0, 1),
-            ],
-        ) * (x * x)
+    level!(x, tau, Temperature, 0: 0: 7, 2: 6, 3: 4, 4: 5, 5: 1, 6: 1)
 }
 
 /// Coefficients of `pi^0, pi^1, ...` of `-d2g/dtau2` in J/kg.
 #[inline(always)]
 pub(super) fn by_temperature_twice(x: f64, tau: f64) -> [f64; 6] {
-    let xx = x * x;
     [
-        r!(tau, TemperatureTwice, 0, 0, 6)
-            + nested_in(
-                x,
-                [
-                    r!(tau, TemperatureTwice, 2, 0, 5),
-                    r!(tau, TemperatureTwice, 3, 0, 3),
-                    r!(tau, TemperatureTwice, 4, 0, 4),
-                ],
-            ) * xx,
-        r!(tau, TemperatureTwice, 0, 1, 6)
-            + nested_in(x, [r!(tau, TemperatureTwice, 2, 1, 3), r!(tau, TemperatureTwice, 3, 1, 3)]) * xx,
-        r!(tau, TemperatureTwice, 0, 2, 5)
-            + nested_in(x, [r!(tau, TemperatureTwice, 2, 2, 3), r!(tau, TemperatureTwice, 3, 2, 1)]) * xx,
-        r!(tau, TemperatureTwice, 0, 3, 5)
-            + nested_in(x, [r!(tau, TemperatureTwice, 2, 3, 3), r!(tau, TemperatureTwice, 3, 3, 1)]) * xx,
-        r!(tau, TemperatureTwice, 0, 4, 4) + r!(tau, TemperatureTwice, 2, 4, 2) * xx,
-        r!(tau, TemperatureTwice, 0, 5, 2) + r!(tau, TemperatureTwice, 2, 5, 1) * xx,
+        level!(x, tau, TemperatureTwice, 0: 0: 6, 2: 5, 3: 3, 4: 4),
+        level!(x, tau, TemperatureTwice, 1: 0: 6, 2: 3, 3: 3),
+        level!(x, tau, TemperatureTwice, 2: 0: 5, 2: 3, 3: 1),
+        level!(x, tau, TemperatureTwice, 3: 0: 5, 2: 3, 3: 1),
+        level!(x, tau, TemperatureTwice, 4: 0: 4, 2: 2),
+        level!(x, tau, TemperatureTwice, 5: 0: 2, 2: 1),
     ]
 }
 
