@@ -32,7 +32,7 @@ fn settings(truth: &serde_json::Value) -> Settings {
             Some("absolute") => PressureKind::Absolute,
             _ => PressureKind::Sea,
         }),
-        composition: Composition::Reference,
+        composition: Some(Composition::Reference),
         ..Settings::default()
     }
 }

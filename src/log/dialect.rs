@@ -1,7 +1,7 @@
 //! How a text log is written: separator, decimal mark, where the header stands, where the rows begin.
 
 use super::columns::is_named;
-use super::header::{self, Field};
+use super::header::Field;
 use super::input::decode;
 use super::number::{self, Cell, Marks};
 use super::{ReadOptions, time};
