@@ -11,6 +11,8 @@ pub mod reduction;
 pub mod report;
 pub mod seawater;
 pub mod settings;
+pub mod sheet;
 pub mod statistics;
 pub mod uncertainty;
 pub mod warning;
+mod words;

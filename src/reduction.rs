@@ -80,7 +80,8 @@ impl Reduction {
     /// # Errors
     /// [`LogError`] when the latitude is not known, or the log cannot be read as a cast (see [`Cast::new`]), has no sample in
     /// the water, or too little water to make a profile of.
-    pub fn new(log: Log, settings: &Settings) -> Result<Self, LogError> {
+    pub fn new(mut log: Log, settings: &Settings) -> Result<Self, LogError> {
+        settings.correct(&mut log);
         let (latitude_deg, longitude_deg) = position(&log, settings)?;
         let composition = composition(settings, latitude_deg, longitude_deg);
         let cast_settings = settings.cast();
@@ -116,7 +117,7 @@ impl Reduction {
             water_level_m: settings.water_level_m.unwrap_or(0.0),
             reference_below_sensor_m: settings.reference_below_sensor_m.unwrap_or(0.0),
         };
-        let eos = settings.equation_of_state;
+        let eos = settings.equation_of_state();
         let model = Model { water: chosen.water.with_equation_of_state(eos), place };
         let other_leg = chosen.other_leg.map(|water| water.with_equation_of_state(eos));
         let column = model.column().map_err(not_water)?;
@@ -133,7 +134,7 @@ impl Reduction {
         let uncertainty =
             DepthUncertainty::evaluate(&model, &column, deepest_dbar, &evidence).map_err(not_water)?;
         let slope = column.depth_per_pressure_m_dbar(deepest.pressure_dbar);
-        let budget = uncertainty.budget(&deepest, slope, settings.coverage_probability);
+        let budget = uncertainty.budget(&deepest, slope, settings.coverage_probability());
         let deepest_m = place.below_datum_m(column.depth_m(deepest.pressure_dbar));
         let ladder = ladder(&model, deepest.pressure_dbar).map_err(not_water)?;
         let survey_orders = survey_orders(deepest_m, budget.expanded_for_m(0.95));
@@ -298,7 +299,7 @@ fn choose_water(
             && nodes[nodes.len() - 1].pressure_dbar - nodes[0].pressure_dbar > share * deepest_dbar
     };
     let (down_speaks, up_speaks) = (spans(&down, SPAN_SHARE), spans(&up, SPAN_SHARE));
-    let leg = match settings.leg {
+    let leg = match settings.leg() {
         LegChoice::Both if down_speaks && up_speaks => LegChoice::Both,
         LegChoice::Up if up_speaks => LegChoice::Up,
         _ if down_speaks => LegChoice::Down,
@@ -318,7 +319,7 @@ fn choose_water(
             });
         }
     };
-    if leg != settings.leg {
+    if leg != settings.leg() {
         let name = |leg| match leg {
             LegChoice::Down => "the down leg",
             LegChoice::Up => "the up leg",
@@ -328,7 +329,7 @@ fn choose_water(
             "other_leg_used",
             format!(
                 "{} spans too little of the cast; the water is that of {}",
-                name(settings.leg),
+                name(settings.leg()),
                 name(leg)
             ),
             "",

@@ -1,15 +1,24 @@
-//! All that is known of a cast besides its log, resolved: what the call, the sheet and the log said, in this order.
+//! All that is known of a cast besides its log: what the call and the sheet said, in this order. What neither said is left
+//! to the log, and then to the defaults.
+
+mod layer;
+pub mod range;
+
+pub use layer::Layer;
 
 use crate::cast::{CastSettings, TareChoice};
 use crate::column::Water;
 use crate::gravity::SurfaceGravity;
-use crate::log::PressureKind;
+use crate::log::{Log, PressureKind};
 use crate::seawater::{Composition, EquationOfState};
 use crate::uncertainty::{Supplied, Term};
 use std::collections::BTreeMap;
 
 /// Air pressure in hPa that is assumed when none is given.
 pub const STANDARD_AIR_HPA: f64 = 1013.25;
+
+/// Probability that expanded uncertainties cover when none is given.
+pub const COVERAGE_PROBABILITY: f64 = 0.95;
 
 /// Which leg the water column is taken from.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
@@ -33,8 +42,12 @@ pub struct OtherCast {
 }
 
 /// What is known of a cast besides its log. `None` where nobody said anything.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Debug, Clone, Default, PartialEq)]
 pub struct Settings {
+    /// Name of the station; `None` takes the log's.
+    pub station: Option<String>,
+    /// Time of the first sample that has a time; `None` takes the log's.
+    pub start: Option<jiff::Timestamp>,
     /// Geodetic latitude in degrees; `None` takes the log's.
     pub latitude_deg: Option<f64>,
     /// Longitude in degrees, east positive; `None` takes the log's.
@@ -43,14 +56,14 @@ pub struct Settings {
     pub pressure_kind: Option<PressureKind>,
     /// Air pressure at the sea surface in hPa.
     pub air_pressure_hpa: Option<f64>,
-    /// What to do about the zero offset.
-    pub tare: TareChoice,
-    /// Leg that the water is taken from.
-    pub leg: LegChoice,
+    /// What to do about the zero offset; see [`Settings::tare`].
+    pub tare: Option<TareChoice>,
+    /// Leg that the water is taken from; see [`Settings::leg`].
+    pub leg: Option<LegChoice>,
     /// Composition of the salt; `None` takes the atlas's at the position, where longitude is known too.
     pub composition: Option<Composition>,
-    /// Formula of specific volume.
-    pub equation_of_state: EquationOfState,
+    /// Formula of specific volume; see [`Settings::equation_of_state`].
+    pub equation_of_state: Option<EquationOfState>,
     /// Water of another cast, to be used in place of the log's.
     pub profile: Option<OtherCast>,
     /// Gravity at the surface against normal gravity.
@@ -67,41 +80,78 @@ pub struct Settings {
     pub reference_below_sensor_m: Option<f64>,
     /// Standard uncertainties that the user supplies.
     pub uncertainties: BTreeMap<Term, Supplied>,
-    /// Probability that expanded uncertainties cover.
-    pub coverage_probability: f64,
-}
-
-impl Default for Settings {
-    fn default() -> Self {
-        Self {
-            latitude_deg: None,
-            longitude_deg: None,
-            pressure_kind: None,
-            air_pressure_hpa: None,
-            tare: TareChoice::Auto,
-            leg: LegChoice::Down,
-            composition: None,
-            equation_of_state: EquationOfState::Gibbs,
-            profile: None,
-            surface_gravity: None,
-            gradient_eotvos: None,
-            geoid_height_m: None,
-            water_level_m: None,
-            datum: None,
-            reference_below_sensor_m: None,
-            uncertainties: BTreeMap::new(),
-            coverage_probability: 0.95,
-        }
-    }
+    /// Probability that expanded uncertainties cover; see [`Settings::coverage_probability`].
+    pub coverage_probability: Option<f64>,
 }
 
 impl Settings {
+    /// These settings, and those of `below` where these are silent; uncertainties term by term.
+    #[must_use]
+    pub fn or(self, below: Self) -> Self {
+        let mut uncertainties = below.uncertainties;
+        uncertainties.extend(self.uncertainties);
+        Self {
+            station: self.station.or(below.station),
+            start: self.start.or(below.start),
+            latitude_deg: self.latitude_deg.or(below.latitude_deg),
+            longitude_deg: self.longitude_deg.or(below.longitude_deg),
+            pressure_kind: self.pressure_kind.or(below.pressure_kind),
+            air_pressure_hpa: self.air_pressure_hpa.or(below.air_pressure_hpa),
+            tare: self.tare.or(below.tare),
+            leg: self.leg.or(below.leg),
+            composition: self.composition.or(below.composition),
+            equation_of_state: self.equation_of_state.or(below.equation_of_state),
+            profile: self.profile.or(below.profile),
+            surface_gravity: self.surface_gravity.or(below.surface_gravity),
+            gradient_eotvos: self.gradient_eotvos.or(below.gradient_eotvos),
+            geoid_height_m: self.geoid_height_m.or(below.geoid_height_m),
+            water_level_m: self.water_level_m.or(below.water_level_m),
+            datum: self.datum.or(below.datum),
+            reference_below_sensor_m: self.reference_below_sensor_m.or(below.reference_below_sensor_m),
+            uncertainties,
+            coverage_probability: self.coverage_probability.or(below.coverage_probability),
+        }
+    }
+
+    /// What to do about the zero offset: by default, take it from the deck.
+    pub fn tare(&self) -> TareChoice {
+        self.tare.unwrap_or(TareChoice::Auto)
+    }
+
+    /// Leg that the water is taken from: by default, the down leg.
+    pub fn leg(&self) -> LegChoice {
+        self.leg.unwrap_or_default()
+    }
+
+    /// Formula of specific volume: by default, the Gibbs function.
+    pub fn equation_of_state(&self) -> EquationOfState {
+        self.equation_of_state.unwrap_or_default()
+    }
+
+    /// Probability that expanded uncertainties cover: by default, 0.95.
+    pub fn coverage_probability(&self) -> f64 {
+        self.coverage_probability.unwrap_or(COVERAGE_PROBABILITY)
+    }
+
+    /// Puts what is known of the log's station and start into the log; a start moves its absolute times along.
+    pub(crate) fn correct(&self, log: &mut Log) {
+        if let Some(station) = &self.station {
+            log.station = Some(station.clone());
+        }
+        if let Some(start) = self.start {
+            log.start = Some(start);
+            if let Some(time) = &mut log.time {
+                time.start = Some(start);
+            }
+        }
+    }
+
     /// What [`crate::cast::Cast::new`] needs.
     pub fn cast(&self) -> CastSettings {
         CastSettings {
             pressure_kind: self.pressure_kind,
             air_pressure_hpa: self.air_pressure_hpa.unwrap_or(STANDARD_AIR_HPA),
-            tare: self.tare,
+            tare: self.tare(),
         }
     }
 

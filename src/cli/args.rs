@@ -19,7 +19,7 @@ A log holds pressure and, best, conductivity (or Practical Salinity) and tempera
 Not for navigation, not for life support, not for deciding how deep a hull may go: there the vehicle's certificate, the class \
 rules, the pilot and the hydrographic office decide.
 
-Exit status: 0 done; 2 the call is wrong; 3 one or more logs could not be reduced.";
+Exit status: 0 done; 2 the call or the sheet is wrong; 3 one or more logs could not be reduced.";
 
 const REDUCE_EXAMPLES: &str = "\
 Examples:
@@ -32,7 +32,13 @@ Examples:
   seaplumb deepest dive.csv --lat -31.52 --lon -176.18
   seaplumb deepest dive.csv --lat -31.52 --gravity-anomaly -182 --uncertainty surface_gravity=8
   seaplumb deepest pressure-only.csv --lat -31.52 --profile nearby.csv --format json
-  seaplumb deepest cruise/*.nc --format csv > cruise.csv";
+  seaplumb deepest cruise/*.nc --format csv > cruise.csv
+  seaplumb deepest --sheet cruise.toml --format json";
+
+const SHEET_EXAMPLES: &str = "\
+Examples:
+  seaplumb sheet cruise/*.nc > cruise.toml
+  seaplumb deepest --sheet cruise.toml";
 
 /// The commands.
 #[derive(Debug, Subcommand)]
@@ -43,6 +49,9 @@ pub enum Command {
     /// The deepest depth and its uncertainty budget, term by term
     #[command(after_help = DEEPEST_EXAMPLES)]
     Deepest(DeepestArgs),
+    /// A cast sheet to fill in, prefilled from the logs
+    #[command(after_help = SHEET_EXAMPLES)]
+    Sheet(SheetArgs),
 }
 
 /// `seaplumb reduce`.
@@ -68,6 +77,20 @@ pub struct DeepestArgs {
     /// All else.
     #[command(flatten)]
     pub shared: SharedArgs,
+}
+
+/// `seaplumb sheet`.
+#[derive(Debug, Args)]
+pub struct SheetArgs {
+    /// Logs that the sheet is to name; none prints a blank sheet
+    #[arg(value_name = "LOG")]
+    pub logs: Vec<String>,
+    /// What a column is: ROLE=NAME or ROLE=NAME:UNIT, NAME also a column number (repeatable)
+    #[arg(long, value_name = "ROLE=NAME[:UNIT]")]
+    pub column: Vec<String>,
+    /// A mark for missing values, besides the usual ones (repeatable)
+    #[arg(long, value_name = "TEXT", allow_hyphen_values = true)]
+    pub missing: Vec<String>,
 }
 
 /// Forms of a depth series.
@@ -156,9 +179,13 @@ pub enum CompositionArg {
 /// Options of every command that reduces logs.
 #[derive(Debug, Args)]
 pub struct SharedArgs {
-    /// Logs to read; '-' is standard input
-    #[arg(required = true, value_name = "LOG")]
+    /// Logs to read; '-' is standard input; none reads all that the sheet names
+    #[arg(required_unless_present = "sheet", value_name = "LOG")]
     pub logs: Vec<String>,
+
+    /// Cast sheet: what is known of casts besides their logs; an option beats it ('seaplumb sheet' prints one to fill in)
+    #[arg(long, value_name = "FILE")]
+    pub sheet: Option<PathBuf>,
 
     /// Latitude of the cast, north positive; else the log's
     #[arg(long, value_name = "DEGREES", allow_negative_numbers = true, help_heading = "Place")]
@@ -176,30 +203,24 @@ pub struct SharedArgs {
     /// From where the pressure counts [default: what the log says, else sea]
     #[arg(long, value_enum, value_name = "KIND", help_heading = "Log")]
     pub pressure: Option<PressureArg>,
-    /// Zero offset: 'auto' takes it from the deck, 'none' leaves readings as they are, or dbar to subtract
-    #[arg(
-        long,
-        value_name = "auto|none|DBAR",
-        default_value = "auto",
-        allow_negative_numbers = true,
-        help_heading = "Log"
-    )]
-    pub tare: String,
+    /// Zero offset: 'auto' takes it from the deck, 'none' leaves readings as they are, or dbar to subtract [default: auto]
+    #[arg(long, value_name = "auto|none|DBAR", allow_negative_numbers = true, help_heading = "Log")]
+    pub tare: Option<String>,
 
-    /// Leg that the water column is taken from
-    #[arg(long, value_enum, default_value_t = LegArg::Down, help_heading = "Water")]
-    pub leg: LegArg,
+    /// Leg that the water column is taken from [default: down]
+    #[arg(long, value_enum, help_heading = "Water")]
+    pub leg: Option<LegArg>,
     /// Water of a nearby cast (pressure, temperature, salinity or conductivity) in place of the log's
     #[arg(long, value_name = "FILE", help_heading = "Water")]
     pub profile: Option<String>,
 
-    /// What the salt is made of
-    #[arg(long, value_enum, default_value_t = CompositionArg::Atlas, help_heading = "Water")]
-    pub composition: CompositionArg,
+    /// What the salt is made of [default: atlas]
+    #[arg(long, value_enum, help_heading = "Water")]
+    pub composition: Option<CompositionArg>,
 
-    /// Formula of specific volume
-    #[arg(long, value_enum, default_value_t = EosArg::Gibbs, help_heading = "Water")]
-    pub eos: EosArg,
+    /// Formula of specific volume [default: gibbs]
+    #[arg(long, value_enum, help_heading = "Water")]
+    pub eos: Option<EosArg>,
 
     /// Air pressure at the sea surface [default: 1013.25]
     #[arg(long, value_name = "HPA", help_heading = "Surface and datum")]
@@ -236,9 +257,9 @@ pub struct SharedArgs {
     /// Standard uncertainty of a term of the budget, in its unit (repeatable)
     #[arg(long, value_name = "TERM=U", help_heading = "Uncertainty")]
     pub uncertainty: Vec<String>,
-    /// Probability that expanded uncertainties cover
-    #[arg(long, value_name = "P", default_value_t = 0.95, help_heading = "Uncertainty")]
-    pub coverage: f64,
+    /// Probability that expanded uncertainties cover [default: 0.95]
+    #[arg(long, value_name = "P", help_heading = "Uncertainty")]
+    pub coverage: Option<f64>,
 
     /// Write one result per log into this folder, and cruise.csv
     #[arg(long, value_name = "DIR", help_heading = "Output")]

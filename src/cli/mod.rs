@@ -4,6 +4,7 @@ mod args;
 mod output;
 mod request;
 mod run;
+mod sheet;
 
 pub use args::Cli;
 pub use run::{Failure, run};

@@ -6,8 +6,10 @@ use crate::gravity::SurfaceGravity;
 use crate::log::{ColumnChoice, PressureKind, ReadOptions};
 use crate::report::Extra;
 use crate::seawater::{Composition, EquationOfState};
-use crate::settings::{LegChoice, Settings};
+use crate::settings::range::{self, Range};
+use crate::settings::{Layer, LegChoice, Settings};
 use crate::uncertainty::{Basis, Supplied, Term};
+use crate::words::nearest;
 use std::collections::BTreeMap;
 
 /// A call that makes no sense, in words that say what would.
@@ -16,66 +18,63 @@ use std::collections::BTreeMap;
 pub struct CallError(pub String);
 
 /// Reads the options about reading.
-pub(super) fn read_options(args: &SharedArgs) -> Result<ReadOptions, CallError> {
-    let columns = args
-        .column
+pub(super) fn read_options(columns: &[String], missing: &[String]) -> Result<ReadOptions, CallError> {
+    let columns = columns
         .iter()
         .map(|text| text.parse::<ColumnChoice>().map_err(|e| CallError(format!("--column {text}: {e}"))))
         .collect::<Result<_, _>>()?;
-    Ok(ReadOptions { columns, missing: args.missing.clone() })
+    Ok(ReadOptions { columns, missing: missing.to_vec() })
 }
 
-/// Reads all other options, but for the profile, which is a file.
-pub(super) fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
-    let within = |option: &str, value: Option<f64>, low: f64, high: f64, unit: &str| match value {
-        Some(v) if !(low..=high).contains(&v) => {
-            Err(CallError(format!("{option} {v}: expected {low} to {high} {unit}")))
-        }
+/// All that the options say of casts.
+pub(super) fn layer(args: &SharedArgs) -> Result<Layer, CallError> {
+    Ok(Layer {
+        reading: read_options(&args.column, &args.missing)?,
+        settings: settings(args)?,
+        profile: args.profile.clone(),
+    })
+}
+
+fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
+    let within = |option: &str, value: Option<f64>, range: Range| match value {
+        Some(v) if !range.holds(v) => Err(CallError(format!("{option} {v}: expected {range}"))),
         _ => Ok(value),
     };
-    let latitude_deg = within("--lat", args.lat, -90.0, 90.0, "degrees")?;
-    let longitude_deg = within("--lon", args.lon, -180.0, 360.0, "degrees")?;
-    let air_pressure_hpa = within("--air-pressure", args.air_pressure, 500.0, 1100.0, "hPa")?;
-    let water_level_m = within("--water-level", args.water_level, -1_000.0, 10_000.0, "m")?;
-    let reference_below_sensor_m = within("--reference-below", args.reference_below, -1_000.0, 1_000.0, "m")?;
-    let anomaly = within("--gravity-anomaly", args.gravity_anomaly, -1_000.0, 1_000.0, "mGal")?;
-    let disturbance = within("--gravity-disturbance", args.gravity_disturbance, -1_000.0, 1_000.0, "mGal")?;
-    let gradient_eotvos = within("--gravity-gradient", args.gravity_gradient, -3_000.0, 3_000.0, "E")?;
-    let geoid_height_m = within("--geoid-height", args.geoid_height, -200.0, 200.0, "m")?;
-    let coverage = within("--coverage", Some(args.coverage), 0.5, 0.999_999, "")?;
+    let anomaly = within("--gravity-anomaly", args.gravity_anomaly, range::SURFACE_GRAVITY)?;
+    let disturbance = within("--gravity-disturbance", args.gravity_disturbance, range::SURFACE_GRAVITY)?;
     Ok(Settings {
-        latitude_deg,
-        longitude_deg,
+        latitude_deg: within("--lat", args.lat, range::LATITUDE)?,
+        longitude_deg: within("--lon", args.lon, range::LONGITUDE)?,
         pressure_kind: args.pressure.map(|kind| match kind {
             PressureArg::Absolute => PressureKind::Absolute,
             PressureArg::Sea => PressureKind::Sea,
             PressureArg::Gauge => PressureKind::Gauge,
         }),
-        air_pressure_hpa,
-        tare: tare(&args.tare)?,
-        leg: match args.leg {
+        air_pressure_hpa: within("--air-pressure", args.air_pressure, range::AIR_PRESSURE)?,
+        tare: args.tare.as_deref().map(tare).transpose()?,
+        leg: args.leg.map(|leg| match leg {
             LegArg::Down => LegChoice::Down,
             LegArg::Up => LegChoice::Up,
             LegArg::Both => LegChoice::Both,
-        },
-        composition: match args.composition {
+        }),
+        composition: args.composition.and_then(|composition| match composition {
             CompositionArg::Atlas => None,
             CompositionArg::Reference => Some(Composition::Reference),
-        },
-        equation_of_state: match args.eos {
+        }),
+        equation_of_state: args.eos.map(|eos| match eos {
             EosArg::Gibbs => EquationOfState::Gibbs,
             EosArg::Polynomial => EquationOfState::Polynomial,
-        },
+        }),
         surface_gravity: anomaly
             .map(SurfaceGravity::FreeAirAnomaly)
             .or(disturbance.map(SurfaceGravity::Disturbance)),
-        gradient_eotvos,
-        geoid_height_m,
-        water_level_m,
+        gradient_eotvos: within("--gravity-gradient", args.gravity_gradient, range::GRADIENT)?,
+        geoid_height_m: within("--geoid-height", args.geoid_height, range::GEOID_HEIGHT)?,
+        water_level_m: within("--water-level", args.water_level, range::WATER_LEVEL)?,
         datum: args.datum.clone(),
-        reference_below_sensor_m,
+        reference_below_sensor_m: within("--reference-below", args.reference_below, range::REFERENCE_BELOW)?,
         uncertainties: uncertainties(&args.uncertainty)?,
-        coverage_probability: coverage.unwrap_or(0.95),
+        coverage_probability: within("--coverage", args.coverage, range::COVERAGE)?,
         ..Settings::default()
     })
 }
@@ -106,7 +105,7 @@ fn tare(text: &str) -> Result<TareChoice, CallError> {
         number => number
             .parse()
             .ok()
-            .filter(|dbar: &f64| dbar.abs() <= 200.0)
+            .filter(|dbar| range::TARE.holds(*dbar))
             .map(TareChoice::Fixed)
             .ok_or_else(|| CallError(format!("--tare {text}: expected auto, none or a number of dbar"))),
     }
@@ -125,44 +124,17 @@ fn uncertainties(typed: &[String]) -> Result<BTreeMap<Term, Supplied>, CallError
                 let near = nearest(key, &Term::ALL.map(Term::key));
                 wrong(format!("no term is called '{key}'; the nearest is '{near}'. The terms: {keys}"))
             })?;
-            let u = number.parse().ok().filter(|u: &f64| u.is_finite() && *u >= 0.0).ok_or_else(|| {
-                wrong(format!("expected a standard uncertainty in {}, zero or more", term.unit()))
-            })?;
-            Ok((term, Supplied { standard_uncertainty: u, basis: Basis::Option }))
+            let u = number.parse().ok().filter(|u| Range::uncertainty(term.unit()).holds(*u)).ok_or_else(
+                || wrong(format!("expected a standard uncertainty in {}, zero or more", term.unit())),
+            )?;
+            Ok((term, Supplied::new(u, Basis::Option)))
         })
         .collect()
-}
-
-/// The word of `known` with the fewest edits (insert, drop, change) from `word`.
-pub(super) fn nearest<'a>(word: &str, known: &[&'a str]) -> &'a str {
-    known.iter().copied().min_by_key(|k| edits(word, k)).unwrap_or("")
-}
-
-fn edits(a: &str, b: &str) -> usize {
-    let b: Vec<char> = b.chars().collect();
-    let mut row: Vec<usize> = (0..=b.len()).collect();
-    for (i, x) in a.chars().enumerate() {
-        let mut diagonal = row[0];
-        row[0] = i + 1;
-        for (j, y) in b.iter().enumerate() {
-            let changed = diagonal + usize::from(x != *y);
-            diagonal = row[j + 1];
-            row[j + 1] = changed.min(row[j] + 1).min(diagonal + 1);
-        }
-    }
-    row[b.len()]
 }
 
 #[cfg(test)]
 mod tests {
     use super::*;
-
-    #[test]
-    fn nearest_word() {
-        assert_eq!(nearest("surface_gravty", &Term::ALL.map(Term::key)), "surface_gravity");
-        assert_eq!(edits("kitten", "sitting"), 3);
-        assert_eq!(edits("", "abc"), 3);
-    }
 
     #[test]
     fn tare_words() {

@@ -3,13 +3,16 @@
 use super::args::{Cli, Command, DeepestFormat, SeriesFormat, SharedArgs};
 use super::output::{Folder, failure};
 use super::request::{self, CallError};
+use super::sheet;
 use crate::cast::{Cast, CastSettings, TareChoice};
 use crate::column::{Salt, Water, WaterNode, bin_means};
 use crate::log::{self, LogError, PressureKind, ReadOptions};
 use crate::reduction::Reduction;
 use crate::report::{DeepestCsv, DeepestJson, DeepestText, Report, SeriesCsv, SeriesJson};
 use crate::seawater::Composition;
-use crate::settings::{OtherCast, STANDARD_AIR_HPA};
+use crate::settings::{Layer, OtherCast, STANDARD_AIR_HPA, Settings};
+use crate::sheet::{Sheet, SheetError};
+use std::collections::BTreeMap;
 use std::io::{self, BufWriter, Write};
 use std::process::ExitCode;
 
@@ -19,6 +22,9 @@ pub enum Failure {
     /// The call is wrong.
     #[error(transparent)]
     Call(#[from] CallError),
+    /// The sheet is wrong.
+    #[error(transparent)]
+    Sheet(#[from] SheetError),
     /// Results cannot be written.
     #[error("results cannot be written: {0}")]
     Output(#[from] io::Error),
@@ -30,7 +36,7 @@ impl Failure {
         match self {
             // Whoever closed the pipe has seen enough.
             Failure::Output(e) if e.kind() == io::ErrorKind::BrokenPipe => ExitCode::SUCCESS,
-            Failure::Call(_) => ExitCode::from(2),
+            Failure::Call(_) | Failure::Sheet(_) => ExitCode::from(2),
             Failure::Output(e) if e.kind() == io::ErrorKind::AlreadyExists => ExitCode::from(2),
             Failure::Output(_) => ExitCode::from(3),
         }
@@ -66,6 +72,7 @@ pub fn run(cli: &Cli, out: &mut dyn Write, notes: &mut dyn Write) -> Result<Exit
             let say = args.format != DeepestFormat::Text || args.shared.into.is_some();
             reduce_all(&args.shared, report.as_mut(), say, out, notes)
         }
+        Command::Sheet(args) => sheet::print(args, out, notes),
     }
 }
 
@@ -77,24 +84,36 @@ fn reduce_all(
     out: &mut dyn Write,
     notes: &mut dyn Write,
 ) -> Result<ExitCode, Failure> {
-    let options = request::read_options(args)?;
-    let mut settings = request::settings(args)?;
-    if args.logs.iter().filter(|log| *log == "-").count() > 1 {
+    let call = request::layer(args)?;
+    let sheet = args.sheet.as_deref().map(Sheet::read).transpose()?;
+    let sources = match &sheet {
+        Some(sheet) if args.logs.is_empty() => sheet.logs()?,
+        _ => args.logs.clone(),
+    };
+    if sources.iter().filter(|log| *log == "-").count() > 1 {
         return Err(CallError("standard input ('-') can be read once only".to_string()).into());
     }
-    if args.into.is_none() && args.logs.len() > 1 && !report.holds_many() {
+    if args.into.is_none() && sources.len() > 1 && !report.holds_many() {
         let text = "several logs make several tables: give a folder for them, --into DIR, or --format json";
         return Err(CallError(text.to_string()).into());
     }
     let mut folder = args.into.as_deref().map(|dir| Folder::open(dir, args.replace)).transpose()?;
-    settings.profile = args.profile.as_deref().map(read_profile).transpose()?;
+    let jobs = jobs(&sources, &call, sheet.as_ref())?;
+    if let Some(sheet) = sheet.as_ref().filter(|sheet| sheet.has_casts() && !args.quiet) {
+        for source in sources.iter().filter(|source| !sheet.names(source)) {
+            writeln!(
+                notes,
+                "{source}: no [[cast]] of the sheet is about it; what the sheet says of all casts holds"
+            )?;
+        }
+    }
 
     let mut out = BufWriter::with_capacity(1 << 16, out);
     // Begun with the first result: when no log can be reduced, nothing is printed that looks like one.
     let mut begun = false;
     let mut failed = 0;
-    for source in &args.logs {
-        let logs = match log::read(source, &options) {
+    for Job { source, reading, settings } in &jobs {
+        let logs = match log::read(source, reading) {
             Ok(logs) => logs,
             Err(error) => {
                 failed += 1;
@@ -110,7 +129,7 @@ fn reduce_all(
             return Err(CallError(text).into());
         }
         for log in logs {
-            match Reduction::new(log, &settings) {
+            match Reduction::new(log, settings) {
                 Ok(reduction) => {
                     match &mut folder {
                         Some(folder) => folder.cast(report, &reduction)?,
@@ -139,8 +158,8 @@ fn reduce_all(
         None => {}
     }
     out.flush()?;
-    if failed > 0 && args.logs.len() > 1 {
-        writeln!(notes, "seaplumb: {failed} could not be reduced, of {} logs", args.logs.len())?;
+    if failed > 0 && jobs.len() > 1 {
+        writeln!(notes, "seaplumb: {failed} could not be reduced, of {} logs", jobs.len())?;
     }
     Ok(if failed > 0 { ExitCode::from(3) } else { ExitCode::SUCCESS })
 }
@@ -162,12 +181,38 @@ fn note(notes: &mut dyn Write, reduction: &Reduction) -> io::Result<()> {
     Ok(())
 }
 
-/// The water of another cast; its composition follows from the position of the dive.
-fn read_profile(source: &str) -> Result<OtherCast, CallError> {
-    let wrong = |e: LogError| CallError(format!("--profile: {e}"));
+/// One log, and all that call and sheet say of it.
+struct Job {
+    source: String,
+    reading: ReadOptions,
+    settings: Settings,
+}
+
+/// An option beats the sheet. Profiles are read here, each once, so that a wrong one is known before the work.
+fn jobs(sources: &[String], call: &Layer, sheet: Option<&Sheet>) -> Result<Vec<Job>, CallError> {
+    let mut profiles: BTreeMap<String, OtherCast> = BTreeMap::new();
+    let who = if call.profile.is_some() { "--profile" } else { "profile of the sheet" };
+    let mut jobs = Vec::with_capacity(sources.len());
+    for source in sources {
+        let said = sheet.map(|sheet| sheet.layer_for(source)).unwrap_or_default();
+        let Layer { reading, mut settings, profile } = call.clone().or(said);
+        if let Some(file) = profile {
+            if !profiles.contains_key(&file) {
+                profiles.insert(file.clone(), read_profile(&file, who)?);
+            }
+            settings.profile = profiles.get(&file).cloned();
+        }
+        jobs.push(Job { source: source.clone(), reading, settings });
+    }
+    Ok(jobs)
+}
+
+/// The water of another cast, whose composition follows from the position of the dive. `who` asked for it, for messages.
+fn read_profile(source: &str, who: &str) -> Result<OtherCast, CallError> {
+    let wrong = |e: LogError| CallError(format!("{who}: {e}"));
     let mut logs = log::read(source, &ReadOptions::default()).map_err(wrong)?;
     if logs.len() != 1 {
-        let text = format!("--profile {source}: expected one cast, found {}", logs.len());
+        let text = format!("{who} {source}: expected one cast, found {}", logs.len());
         return Err(CallError(text));
     }
     let log = logs.remove(0);

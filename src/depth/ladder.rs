@@ -23,7 +23,9 @@ pub struct Rung {
 pub fn ladder(model: &Model, pressure_dbar: f64) -> Result<Vec<Rung>, ProfileError> {
     let place = &model.place;
     let surface = place.surface_dbar;
-    let standard = Water::standard_ocean(pressure_dbar).profile(surface, &WaterShift::default())?;
+    let standard = Water::standard_ocean(pressure_dbar)
+        .with_equation_of_state(model.water.equation_of_state())
+        .profile(surface, &WaterShift::default())?;
     let insitu = model.profile()?;
     let depth =
         |profile, gravity: &dyn Gravity| Column::integrate(profile, surface, gravity).depth_m(pressure_dbar);

@@ -27,7 +27,7 @@ impl Place {
     }
 
     /// A cell of a line: `start` and `length` count bytes of `bytes`.
-    pub(super) fn span(line: u64, bytes: &[u8], start: usize, length: usize) -> Self {
+    pub(crate) fn span(line: u64, bytes: &[u8], start: usize, length: usize) -> Self {
         let start = start.min(bytes.len());
         let end = (start + length).min(bytes.len());
         let before = decode(&bytes[..start]).chars().count();
@@ -84,27 +84,36 @@ impl LogError {
 
 impl fmt::Display for LogError {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        write!(f, "{}", self.file)?;
-        if let Some(place) = &self.place {
-            write!(f, ":{}", place.line)?;
-            if let Some(column) = place.column {
-                write!(f, ":{column}")?;
-            }
-        }
-        write!(f, ": {}", self.problem)?;
-        if let Some(place) = &self.place
-            && let Place { text: Some(text), column, width, .. } = place.as_ref()
-        {
-            write!(f, "\n  | {}", text.replace('\t', " "))?;
-            if let Some(column) = column {
-                write!(f, "\n  | {}{}", " ".repeat(column.saturating_sub(1)), "^".repeat((*width).max(1)))?;
-            }
-        }
-        if let Some(remedy) = &self.remedy {
-            write!(f, "\n  {remedy}")?;
-        }
-        Ok(())
+        picture(f, &self.file, self.place.as_deref(), &self.problem, self.remedy.as_deref())
     }
+}
+
+/// An error as people see it: file, line and column, what is wrong, the line with a caret, what settles it.
+pub(crate) fn picture(
+    f: &mut fmt::Formatter<'_>,
+    file: &str,
+    place: Option<&Place>,
+    problem: &str,
+    remedy: Option<&str>,
+) -> fmt::Result {
+    write!(f, "{file}")?;
+    if let Some(place) = place {
+        write!(f, ":{}", place.line)?;
+        if let Some(column) = place.column {
+            write!(f, ":{column}")?;
+        }
+    }
+    write!(f, ": {problem}")?;
+    if let Some(Place { text: Some(text), column, width, .. }) = place {
+        write!(f, "\n  | {}", text.replace('\t', " "))?;
+        if let Some(column) = column {
+            write!(f, "\n  | {}{}", " ".repeat(column.saturating_sub(1)), "^".repeat((*width).max(1)))?;
+        }
+    }
+    if let Some(remedy) = remedy {
+        write!(f, "\n  {remedy}")?;
+    }
+    Ok(())
 }
 
 impl std::error::Error for LogError {}

@@ -24,6 +24,7 @@ mod rows;
 mod time;
 mod unit;
 
+pub(crate) use error::picture;
 pub use error::{LogError, Place};
 pub use format::{read, read_bytes};
 

@@ -41,10 +41,20 @@ const LEVELS: usize = 500;
 /// A standard uncertainty that the user supplies, in the unit of its term.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Supplied {
-    /// Standard uncertainty.
+    /// Standard uncertainty that is the same at all depths.
     pub standard_uncertainty: f64,
+    /// Standard uncertainty as a fraction of the reading, besides and independent of the other; of
+    /// [`Term::PressureCalibration`] only.
+    pub relative: f64,
     /// Whether it came from a sheet or an option.
     pub basis: Basis,
+}
+
+impl Supplied {
+    /// A standard uncertainty that is the same at all depths.
+    pub fn new(standard_uncertainty: f64, basis: Basis) -> Self {
+        Self { standard_uncertainty, relative: 0.0, basis }
+    }
 }
 
 /// From where the water of the model comes.
@@ -266,20 +276,28 @@ impl Evaluator<'_> {
         })
     }
 
-    /// Either one number, or a fraction of the reading.
+    /// `u = sqrt(u_constant^2 + (u_relative p)^2)`: an offset and an error of the slope, each one error along the whole profile,
+    /// independent of each other.
     fn pressure_calibration(&self) -> Result<Line, ProfileError> {
-        let term = Term::PressureCalibration;
-        if let Some(s) = self.evidence.supplied.get(&term) {
-            return self.line(term, 0.0, s.standard_uncertainty, s.basis, |u| Shift {
-                water: WaterShift { pressure_dbar: u, ..WaterShift::default() },
-                ..Shift::default()
-            });
-        }
-        let line = self.line(term, 0.0, ASSUMED_PRESSURE_RELATIVE, Basis::Assumed, |u| Shift {
-            water: WaterShift { pressure_relative: u, ..WaterShift::default() },
-            ..Shift::default()
+        let (constant, relative, basis) = match self.evidence.supplied.get(&Term::PressureCalibration) {
+            Some(s) => (s.standard_uncertainty, s.relative, s.basis),
+            None => (0.0, ASSUMED_PRESSURE_RELATIVE, Basis::Assumed),
+        };
+        let water = |water| Shift { water, ..Shift::default() };
+        let of_offset = self
+            .effect(|sign| water(WaterShift { pressure_dbar: sign * constant, ..WaterShift::default() }))?;
+        let of_slope = self.effect(|sign| {
+            water(WaterShift { pressure_relative: sign * relative, ..WaterShift::default() })
         })?;
-        Ok(Line { u: self.levels_dbar.iter().map(|p| ASSUMED_PRESSURE_RELATIVE * p.abs()).collect(), ..line })
+        Ok(Line {
+            term: Term::PressureCalibration,
+            value: 0.0,
+            u: self.levels_dbar.iter().map(|p| constant.hypot(relative * p)).collect(),
+            effect_m: of_offset.iter().zip(&of_slope).map(|(a, b)| a.hypot(*b).copysign(a + b)).collect(),
+            distribution: Distribution::Normal,
+            degrees_of_freedom: None,
+            basis,
+        })
     }
 
     fn tare(&self) -> Result<Line, ProfileError> {

@@ -97,6 +97,31 @@ impl Term {
         Term::ALL.into_iter().find(|term| term.key() == key)
     }
 
+    /// What it is the uncertainty of, in plain words.
+    pub fn meaning(self) -> &'static str {
+        match self {
+            Term::PressureCalibration => "calibration and drift of the pressure sensor",
+            Term::PressureNoise => "noise of the deepest pressure",
+            Term::Tare => "zero offset of the pressure sensor",
+            Term::AirPressure => "air pressure at the sea surface",
+            Term::TemperatureCalibration => "calibration of the thermometer",
+            Term::ConductivityCalibration => "calibration of the conductivity cell",
+            Term::SalinityCalibration => "calibration of salinity, where the log carries salinity",
+            Term::SalinityComposition => "composition of the salt, as Absolute Salinity",
+            Term::EquationOfState => "equation of state, relative, of specific volume",
+            Term::ProfileRepresentativeness => "how well the profile stands for the water, as depth",
+            Term::SurfaceGap => "density of the unsampled water above the first level",
+            Term::SurfaceGravity => "gravity at the surface against normal gravity",
+            Term::GravityGradient => "gradient anomaly of gravity",
+            Term::GeoidHeight => "height of the geoid above the ellipsoid",
+            Term::Position => "latitude",
+            Term::WaterLevel => "tide and surge against the datum",
+            Term::ReferenceOffset => "distance from the sensor to the reference point",
+            Term::PeakEstimate => "picking the largest of many noisy samples",
+            Term::Integration => "numerical error of the integral, as depth",
+        }
+    }
+
     /// Unit of its value and its standard uncertainty.
     pub fn unit(self) -> &'static str {
         match self {
