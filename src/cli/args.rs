@@ -13,7 +13,8 @@ pub struct Cli {
 }
 
 const AFTER_HELP: &str = "\
-A log holds pressure and, best, conductivity (or Practical Salinity) and temperature: delimited text, also .gz, or NetCDF. \
+A log holds pressure and, best, conductivity (or Practical Salinity) and temperature: delimited text, also .gz, \
+WHP-Exchange CTD files, NetCDF, or a .zip of any of these. \
 '-' reads standard input. Results go to standard output, notes to standard error.
 
 Not for navigation, not for life support, not for deciding how deep a hull may go: there the vehicle's certificate, the class \
@@ -34,6 +35,12 @@ Examples:
   seaplumb deepest pressure-only.csv --lat -31.52 --profile nearby.csv --format json
   seaplumb deepest cruise/*.nc --format csv > cruise.csv";
 
+const INSPECT_EXAMPLES: &str = "\
+Examples:
+  seaplumb inspect dive.csv
+  seaplumb inspect casts.zip --format json
+  seaplumb inspect dive.csv --pressure absolute --air-pressure 1009.3 --samples";
+
 /// The commands.
 #[derive(Debug, Subcommand)]
 pub enum Command {
@@ -43,6 +50,9 @@ pub enum Command {
     /// The deepest depth and its uncertainty budget, term by term
     #[command(after_help = DEEPEST_EXAMPLES)]
     Deepest(DeepestArgs),
+    /// What was understood of a log: columns, units, legs, gaps, deck, suspect samples
+    #[command(after_help = INSPECT_EXAMPLES)]
+    Inspect(InspectArgs),
 }
 
 /// `seaplumb reduce`.
@@ -65,6 +75,32 @@ pub struct DeepestArgs {
     /// All else.
     #[command(flatten)]
     pub shared: SharedArgs,
+}
+
+/// `seaplumb inspect`.
+#[derive(Debug, Args)]
+pub struct InspectArgs {
+    /// Form of the result
+    #[arg(long, value_enum, default_value_t = InspectFormat::Text, help_heading = "Output")]
+    pub format: InspectFormat,
+    /// List every suspect sample
+    #[arg(long, help_heading = "Output")]
+    pub samples: bool,
+    /// No notes on standard error; errors still show
+    #[arg(long, short, help_heading = "Output")]
+    pub quiet: bool,
+    /// Logs, and how to read them.
+    #[command(flatten)]
+    pub log: LogArgs,
+}
+
+/// Forms of what was understood.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub enum InspectFormat {
+    /// For people
+    Text,
+    /// All figures
+    Json,
 }
 
 /// Forms of a depth series.
@@ -116,19 +152,12 @@ pub enum CompositionArg {
     Reference,
 }
 
-/// Options of every command that reduces logs.
+/// Logs, and what must be said to read them.
 #[derive(Debug, Args)]
-pub struct SharedArgs {
+pub struct LogArgs {
     /// Logs to read; '-' is standard input
     #[arg(required = true, value_name = "LOG")]
     pub logs: Vec<String>,
-
-    /// Latitude of the cast, north positive; else the log's
-    #[arg(long, value_name = "DEGREES", allow_negative_numbers = true, help_heading = "Place")]
-    pub lat: Option<f64>,
-    /// Longitude of the cast, east positive; else the log's
-    #[arg(long, value_name = "DEGREES", allow_negative_numbers = true, help_heading = "Place")]
-    pub lon: Option<f64>,
 
     /// What a column is: ROLE=NAME or ROLE=NAME:UNIT, NAME also a column number (repeatable)
     #[arg(long, value_name = "ROLE=NAME[:UNIT]", help_heading = "Log")]
@@ -148,6 +177,24 @@ pub struct SharedArgs {
         help_heading = "Log"
     )]
     pub tare: String,
+    /// Air pressure at the sea surface [default: 1013.25]
+    #[arg(long, value_name = "HPA", help_heading = "Surface and datum")]
+    pub air_pressure: Option<f64>,
+}
+
+/// Options of every command that reduces logs.
+#[derive(Debug, Args)]
+pub struct SharedArgs {
+    /// Logs, and how to read them.
+    #[command(flatten)]
+    pub log: LogArgs,
+
+    /// Latitude of the cast, north positive; else the log's
+    #[arg(long, value_name = "DEGREES", allow_negative_numbers = true, help_heading = "Place")]
+    pub lat: Option<f64>,
+    /// Longitude of the cast, east positive; else the log's
+    #[arg(long, value_name = "DEGREES", allow_negative_numbers = true, help_heading = "Place")]
+    pub lon: Option<f64>,
 
     /// Leg that the water column is taken from
     #[arg(long, value_enum, default_value_t = LegArg::Down, help_heading = "Water")]
@@ -160,9 +207,6 @@ pub struct SharedArgs {
     #[arg(long, value_enum, default_value_t = CompositionArg::Reference, help_heading = "Water")]
     pub composition: CompositionArg,
 
-    /// Air pressure at the sea surface [default: 1013.25]
-    #[arg(long, value_name = "HPA", help_heading = "Surface and datum")]
-    pub air_pressure: Option<f64>,
     /// Height of the water above the datum [default: 0]
     #[arg(long, value_name = "M", allow_negative_numbers = true, help_heading = "Surface and datum")]
     pub water_level: Option<f64>,

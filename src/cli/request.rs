@@ -1,6 +1,6 @@
 //! From what was typed to what is meant.
 
-use super::args::{CompositionArg, LegArg, PressureArg, SharedArgs};
+use super::args::{CompositionArg, LegArg, LogArgs, PressureArg, SharedArgs};
 use crate::cast::TareChoice;
 use crate::gravity::SurfaceGravity;
 use crate::log::{ColumnChoice, PressureKind, ReadOptions};
@@ -15,7 +15,7 @@ use std::collections::BTreeMap;
 pub struct CallError(pub String);
 
 /// Reads the options about reading.
-pub(super) fn read_options(args: &SharedArgs) -> Result<ReadOptions, CallError> {
+pub(super) fn read_options(args: &LogArgs) -> Result<ReadOptions, CallError> {
     let columns = args
         .column
         .iter()
@@ -24,17 +24,48 @@ pub(super) fn read_options(args: &SharedArgs) -> Result<ReadOptions, CallError> 
     Ok(ReadOptions { columns, missing: args.missing.clone() })
 }
 
-/// Reads all other options, but for the profile, which is a file.
-pub(super) fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
-    let within = |option: &str, value: Option<f64>, low: f64, high: f64, unit: &str| match value {
+/// A number that was typed, when it lies in the range that makes sense.
+fn within(
+    option: &str,
+    value: Option<f64>,
+    low: f64,
+    high: f64,
+    unit: &str,
+) -> Result<Option<f64>, CallError> {
+    match value {
         Some(v) if !(low..=high).contains(&v) => {
             Err(CallError(format!("{option} {v}: expected {low} to {high} {unit}")))
         }
         _ => Ok(value),
-    };
+    }
+}
+
+/// Reads the options about the sensor and the air above it.
+pub(super) fn log_settings(args: &LogArgs) -> Result<Settings, CallError> {
+    Ok(Settings {
+        pressure_kind: args.pressure.map(|kind| match kind {
+            PressureArg::Absolute => PressureKind::Absolute,
+            PressureArg::Sea => PressureKind::Sea,
+            PressureArg::Gauge => PressureKind::Gauge,
+        }),
+        air_pressure_hpa: within("--air-pressure", args.air_pressure, 500.0, 1100.0, "hPa")?,
+        tare: tare(&args.tare)?,
+        ..Settings::default()
+    })
+}
+
+/// Refuses standard input named twice.
+pub(super) fn check_logs(args: &LogArgs) -> Result<(), CallError> {
+    if args.logs.iter().filter(|log| *log == "-").count() > 1 {
+        return Err(CallError("standard input ('-') can be read once only".to_string()));
+    }
+    Ok(())
+}
+
+/// Reads all other options, but for the profile, which is a file.
+pub(super) fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
     let latitude_deg = within("--lat", args.lat, -90.0, 90.0, "degrees")?;
     let longitude_deg = within("--lon", args.lon, -180.0, 360.0, "degrees")?;
-    let air_pressure_hpa = within("--air-pressure", args.air_pressure, 500.0, 1100.0, "hPa")?;
     let water_level_m = within("--water-level", args.water_level, -1_000.0, 10_000.0, "m")?;
     let reference_below_sensor_m = within("--reference-below", args.reference_below, -1_000.0, 1_000.0, "m")?;
     let anomaly = within("--gravity-anomaly", args.gravity_anomaly, -1_000.0, 1_000.0, "mGal")?;
@@ -45,13 +76,6 @@ pub(super) fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
     Ok(Settings {
         latitude_deg,
         longitude_deg,
-        pressure_kind: args.pressure.map(|kind| match kind {
-            PressureArg::Absolute => PressureKind::Absolute,
-            PressureArg::Sea => PressureKind::Sea,
-            PressureArg::Gauge => PressureKind::Gauge,
-        }),
-        air_pressure_hpa,
-        tare: tare(&args.tare)?,
         leg: match args.leg {
             LegArg::Down => LegChoice::Down,
             LegArg::Up => LegChoice::Up,
@@ -70,7 +94,7 @@ pub(super) fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
         reference_below_sensor_m,
         uncertainties: uncertainties(&args.uncertainty)?,
         coverage_probability: coverage.unwrap_or(0.95),
-        ..Settings::default()
+        ..log_settings(&args.log)?
     })
 }
 

@@ -65,6 +65,7 @@ pub fn run(cli: &Cli, out: &mut dyn Write, notes: &mut dyn Write) -> Result<Exit
             let say = args.format != DeepestFormat::Text || args.shared.into.is_some();
             reduce_all(&args.shared, report.as_mut(), say, out, notes)
         }
+        Command::Inspect(args) => super::inspect::inspect(args, out, notes),
     }
 }
 
@@ -76,12 +77,10 @@ fn reduce_all(
     out: &mut dyn Write,
     notes: &mut dyn Write,
 ) -> Result<ExitCode, Failure> {
-    let options = request::read_options(args)?;
+    let options = request::read_options(&args.log)?;
     let mut settings = request::settings(args)?;
-    if args.logs.iter().filter(|log| *log == "-").count() > 1 {
-        return Err(CallError("standard input ('-') can be read once only".to_string()).into());
-    }
-    if args.into.is_none() && args.logs.len() > 1 && !report.holds_many() {
+    request::check_logs(&args.log)?;
+    if args.into.is_none() && args.log.logs.len() > 1 && !report.holds_many() {
         let text = "several logs make several tables: give a folder for them, --into DIR, or --format json";
         return Err(CallError(text.to_string()).into());
     }
@@ -92,8 +91,8 @@ fn reduce_all(
     // Begun with the first result: when no log can be reduced, nothing is printed that looks like one.
     let mut begun = false;
     let mut failed = 0;
-    for source in &args.logs {
-        let logs = match log::read(source, &options) {
+    for source in &args.log.logs {
+        let logs = match log::read_each(source, &options) {
             Ok(logs) => logs,
             Err(error) => {
                 failed += 1;
@@ -109,7 +108,7 @@ fn reduce_all(
             return Err(CallError(text).into());
         }
         for log in logs {
-            match Reduction::new(log, &settings) {
+            match log.and_then(|log| Reduction::new(log, &settings)) {
                 Ok(reduction) => {
                     match &mut folder {
                         Some(folder) => folder.cast(report, &reduction)?,
@@ -138,8 +137,8 @@ fn reduce_all(
         None => {}
     }
     out.flush()?;
-    if failed > 0 && args.logs.len() > 1 {
-        writeln!(notes, "seaplumb: {failed} could not be reduced, of {} logs", args.logs.len())?;
+    if failed > 0 && args.log.logs.len() > 1 {
+        writeln!(notes, "seaplumb: {failed} could not be reduced, of {} logs", args.log.logs.len())?;
     }
     Ok(if failed > 0 { ExitCode::from(3) } else { ExitCode::SUCCESS })
 }
