@@ -126,3 +126,26 @@ fn names_are_words_and_never_paths() {
     let logs = read_bytes("a.zip", archive, &ReadOptions::default()).expect("a log");
     assert_eq!(logs[0].source, "a.zip#../../etc/\u{fffd}[31mx.csv");
 }
+
+#[test]
+fn a_reduction_does_the_others_and_names_the_one_that_failed() {
+    let cast = std::fs::read(Path::new(env!("CARGO_MANIFEST_DIR")).join("demo-data/salinity-cast.csv"));
+    let cast = cast.expect("the demo");
+    let archive =
+        stored(&[("broken.csv", b"time_s,pressure_dbar\n0,1.x\n1,2\n"), ("casts/K7.csv", &cast)], 0, 0);
+    let dir = tempfile::tempdir().expect("a folder");
+    let path = dir.path().join("cruise.zip").display().to_string();
+    let into = dir.path().join("out");
+    std::fs::write(&path, archive).expect("written");
+    let output = assert_cmd::Command::cargo_bin("seaplumb")
+        .expect("the program")
+        .args(["reduce", &path, "--lat", "-19.4", "--into", &into.display().to_string()])
+        .output()
+        .expect("a run");
+    let notes = String::from_utf8_lossy(&output.stderr);
+    assert_eq!(output.status.code(), Some(3), "{notes}");
+    assert!(notes.contains("cruise.zip#broken.csv:2:3"), "{notes}");
+    // The name of an entry does not lead out of the folder, nor into others.
+    let rows = std::fs::read_to_string(into.join("K7.csv")).expect("the result").lines().count();
+    assert_eq!(rows, 1249);
+}

@@ -114,7 +114,7 @@ fn log_lines(out: &mut dyn Write, i: &Inspection) -> io::Result<()> {
             let longitude = p.longitude_deg.map_or(String::new(), |l| format!(", longitude {l}"));
             format!("latitude {}{longitude}", p.latitude_deg)
         }
-        None => "not told by the log; a reduction needs --lat, and --lon".to_string(),
+        None => "not told by the log; a reduction needs --lat DEGREES".to_string(),
     };
     entry(out, "Position", &position)?;
     let lines = match (log.line_of(0), log.line_of(log.len().saturating_sub(1))) {
@@ -160,6 +160,7 @@ fn columns(out: &mut dyn Write, log: &Log) -> io::Result<()> {
     };
     let (name_width, unit_width) = (width(1, 28), width(2, 16));
     for [role, name, unit, how] in &rows {
+        let unit = if *unit == "1" { "" } else { unit };
         writeln!(out, "    {role:<13} {name:<name_width$}  {unit:<unit_width$}  {how}")?;
     }
     if log.flags.is_some() {
@@ -265,7 +266,8 @@ fn gaps(out: &mut dyn Write, i: &Inspection) -> io::Result<()> {
 
 fn values(out: &mut dyn Write, i: &Inspection) -> io::Result<()> {
     let head = if i.cast.is_ok() { "good, in the water" } else { "" };
-    writeln!(out, "\n  {:<28}{:>8}{:>23}{:>23}", "Values", "missing", "in the log", head)?;
+    let head = format!("  {:<28}{:>8}{:>23}{head:>23}", "Values", "missing", "in the log");
+    writeln!(out, "\n{}", head.trim_end())?;
     for v in &i.values {
         let name =
             if v.unit.is_empty() { v.quantity.to_string() } else { format!("{}, {}", v.quantity, v.unit) };
@@ -291,7 +293,7 @@ fn flags(out: &mut dyn Write, i: &Inspection) -> io::Result<()> {
         entry(out, "Logged flags", &format!("{}: {}", flags.about, words(flags)))?;
     }
     match &i.sample_flags {
-        Some(flags) => entry(out, "Flags given", &words(flags)),
+        Some(flags) => entry(out, "Verdict", &format!("samples: {}", words(flags))),
         None => Ok(()),
     }
 }

@@ -4,15 +4,19 @@
 //! names, a line of units, the rows, `END_DATA` (Swift and Diggs, "Description of WHP-Exchange Format for CTD/Hydrographic
 //! Data", 2008; recalled). The rows are read as those of any delimited text.
 
-use super::cell::{Separator, cell};
+mod lines;
+
+use lines::{Item, Line, Lines, bare};
+
+use super::cell::Separator;
 use super::columns::{self, Pick, Picks};
 use super::delimited::{Plan, look_at_values};
-use super::dialect::{Dialect, is_comment_row};
+use super::dialect::Dialect;
 use super::header::Field;
-use super::input::{Input, decode};
+use super::input::Input;
 use super::number::{self, Cell, Marks};
 use super::rows::Rows;
-use super::{Log, LogError, Place, ReadOptions, Role, position, time};
+use super::{Log, LogError, ReadOptions, Role, position, time};
 use crate::warning::Warning;
 
 /// What the first line announces.
@@ -49,13 +53,6 @@ fn kind(bytes: &[u8]) -> Option<Kind> {
 const COUNT: &str = "NUMBER_HEADERS";
 /// The line that ends the rows.
 const END: &[u8] = b"END_DATA";
-
-/// A line without blanks around it and without the commas that a spreadsheet adds behind it.
-fn bare(line: &[u8]) -> &[u8] {
-    let line = line.trim_ascii();
-    let end = line.iter().rposition(|&b| !matches!(b, b',' | b' ')).map_or(0, |last| last + 1);
-    &line[..end]
-}
 
 /// Reads the cast of a WHP-Exchange CTD file.
 pub(super) fn read(input: &Input, options: &ReadOptions) -> Result<Vec<Log>, LogError> {
@@ -96,104 +93,6 @@ pub(super) fn read(input: &Input, options: &ReadOptions) -> Result<Vec<Log>, Log
     log.position = log.position.or(position);
     log.start = log.start.or(start);
     Ok(vec![log])
-}
-
-/// One line of the file; `start` is where it begins.
-#[derive(Debug, Clone, Copy)]
-struct Line<'a> {
-    number: u64,
-    start: usize,
-    bytes: &'a [u8],
-}
-
-impl Line<'_> {
-    fn place(&self) -> Place {
-        Place::line(self.number, &decode(self.bytes))
-    }
-
-    fn span(&self, start: usize, length: usize) -> Place {
-        Place::span(self.number, self.bytes, start, length)
-    }
-
-    fn is_passed_over(&self) -> bool {
-        let line = self.bytes.trim_ascii();
-        line.is_empty() || is_comment_row(line)
-    }
-
-    /// The cells with their places; an empty one behind the last comma is none.
-    fn cells(&self) -> Vec<(String, usize, usize)> {
-        let (mut cells, mut at) = (Vec::new(), Some(0));
-        while let Some(from) = at {
-            let cell = cell(self.bytes, from, Separator::Comma);
-            cells.push((decode(cell.text).into_owned(), cell.start, cell.text.len()));
-            at = cell.next;
-        }
-        cells
-    }
-}
-
-/// Lines one after the other, comments and empty ones passed over.
-struct Lines<'a> {
-    text: &'a [u8],
-    at: usize,
-    number: u64,
-}
-
-impl<'a> Lines<'a> {
-    fn any(&mut self) -> Option<Line<'a>> {
-        if self.at >= self.text.len() {
-            return None;
-        }
-        let rest = &self.text[self.at..];
-        let length = rest.iter().position(|&b| b == b'\n').unwrap_or(rest.len());
-        self.number += 1;
-        let line = Line { number: self.number, start: self.at, bytes: &rest[..length] };
-        self.at += length + 1;
-        Some(line)
-    }
-}
-
-impl<'a> Iterator for Lines<'a> {
-    type Item = Line<'a>;
-
-    fn next(&mut self) -> Option<Line<'a>> {
-        loop {
-            let line = self.any()?;
-            if !line.is_passed_over() {
-                return Some(line);
-            }
-        }
-    }
-}
-
-/// `KEY = value`, and where the value stands in its line.
-struct Item<'a> {
-    line: Line<'a>,
-    key: String,
-    value: String,
-    start: usize,
-}
-
-impl<'a> Item<'a> {
-    fn new(line: Line<'a>) -> Option<Self> {
-        let equals = line.bytes.iter().position(|&b| b == b'=')?;
-        let key = line.bytes[..equals].trim_ascii();
-        if key.is_empty() || key.contains(&b',') {
-            return None;
-        }
-        let value = bare(&line.bytes[equals + 1..]);
-        let blanks = line.bytes[equals + 1..].iter().take_while(|b| b.is_ascii_whitespace()).count();
-        Some(Self {
-            line,
-            key: decode(key).to_ascii_uppercase(),
-            value: decode(value).into_owned(),
-            start: equals + 1 + blanks,
-        })
-    }
-
-    fn place(&self) -> Place {
-        self.line.span(self.start, self.line.bytes.len().saturating_sub(self.start))
-    }
 }
 
 /// Everything above the rows.
