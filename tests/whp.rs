@@ -83,10 +83,12 @@ fn with(from: &str, to: &str) -> String {
     cast.replacen(from, to, 1)
 }
 
+/// What is wrong, line, column, words of the message.
+type Case<'a> = (String, Option<u64>, Option<usize>, &'a [&'a str]);
+
 #[test]
 fn mistakes_are_shown_where_they_are() {
-    // What is wrong, line, column, words of the message.
-    let cases: &[(String, Option<u64>, Option<usize>, &[&str])] = &[
+    let cases: &[Case<'_>] = &[
         (
             with("HEADERS = 10", "HEADERS = 9"),
             Some(4),

@@ -3,7 +3,7 @@
 use super::InspectReport;
 use super::deepest_text::{bullet, clock, wrapped};
 use super::inspect_json::{flag_name, kind_name};
-use super::number::{grouped, short};
+use super::number::{grouped, push_trimmed, short};
 use super::series_csv::absolute;
 use crate::cast::{Cast, TareBasis};
 use crate::inspection::{FlagCounts, GAP_INTERVALS, Inspection, Source, Stretch};
@@ -111,8 +111,8 @@ fn log_lines(out: &mut dyn Write, i: &Inspection) -> io::Result<()> {
     }
     let position = match log.position {
         Some(p) => {
-            let longitude = p.longitude_deg.map_or(String::new(), |l| format!(", longitude {l}"));
-            format!("latitude {}{longitude}", p.latitude_deg)
+            let longitude = p.longitude_deg.map_or(String::new(), |l| format!(", longitude {}", degrees(l)));
+            format!("latitude {}{longitude}", degrees(p.latitude_deg))
         }
         None => "not told by the log; a reduction needs --lat DEGREES".to_string(),
     };
@@ -380,6 +380,13 @@ fn span((low, high): (f64, f64), decimals: u32) -> String {
     if low == high { low } else { format!("{low} to {high}") }
 }
 
+/// Degrees to a metre or so: single precision in a file leaves digits that mean nothing.
+fn degrees(value: f64) -> String {
+    let mut text = Vec::new();
+    push_trimmed(&mut text, value, 5);
+    String::from_utf8_lossy(&text).into_owned()
+}
+
 fn counted(n: u64) -> String {
     grouped(n as f64, 0)
 }
@@ -399,5 +406,6 @@ mod tests {
     fn ranges_for_people() {
         assert_eq!(span((-0.25, 11_204.5), 1), "-0.2 to 11 204.5");
         assert_eq!(span((2.0, 2.0), 2), "2.00");
+        assert_eq!((degrees(42.973_499_298).as_str(), degrees(-31.5).as_str()), ("42.9735", "-31.5"));
     }
 }
