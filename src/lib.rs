@@ -6,6 +6,7 @@ pub mod column;
 pub mod constants;
 pub mod depth;
 pub mod gravity;
+pub mod inspection;
 pub mod log;
 pub mod reduction;
 pub mod report;

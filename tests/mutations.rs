@@ -91,6 +91,28 @@ fn damaged_netcdf_is_read_or_refused() {
 }
 
 #[test]
+fn damaged_whp_exchange_is_read_or_refused() {
+    let folder = Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/golden");
+    let mut random = Random(4);
+    for name in ["whp_cast.csv", "whp_old.csv"] {
+        let bytes = std::fs::read(folder.join(name)).expect("the file");
+        let (read, refused) = damage("cast.csv", &bytes, 10_000, &mut random);
+        assert!(read > 1000 && refused > 1000, "{name}: {read} read, {refused} refused");
+    }
+}
+
+#[test]
+fn damaged_archives_are_read_or_refused() {
+    let folder = Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/golden");
+    let mut random = Random(5);
+    for name in ["casts.zip", "casts_streamed.zip"] {
+        let bytes = std::fs::read(folder.join(name)).expect("the file");
+        let (read, refused) = damage("casts.zip", &bytes, 10_000, &mut random);
+        assert!(read > 100 && refused > 1000, "{name}: {read} read, {refused} refused");
+    }
+}
+
+#[test]
 fn damaged_gzip_is_read_or_refused() {
     let mut gz = flate2::write::GzEncoder::new(Vec::new(), flate2::Compression::default());
     std::io::Write::write_all(&mut gz, TEXT.as_bytes()).expect("in memory");

@@ -13,7 +13,8 @@ pub struct Cli {
 }
 
 const AFTER_HELP: &str = "\
-A log holds pressure and, best, conductivity (or Practical Salinity) and temperature: delimited text, also .gz, or NetCDF. \
+A log holds pressure and, best, conductivity (or Practical Salinity) and temperature: delimited text, also .gz, \
+WHP-Exchange CTD files, NetCDF, or a .zip of any of these. \
 '-' reads standard input. Results go to standard output, notes to standard error.
 
 Not for navigation, not for life support, not for deciding how deep a hull may go: there the vehicle's certificate, the class \
@@ -40,6 +41,12 @@ Examples:
   seaplumb sheet cruise/*.nc > cruise.toml
   seaplumb deepest --sheet cruise.toml";
 
+const INSPECT_EXAMPLES: &str = "\
+Examples:
+  seaplumb inspect dive.csv
+  seaplumb inspect casts.zip --format json
+  seaplumb inspect dive.csv --pressure absolute --air-pressure 1009.3 --samples";
+
 /// The commands.
 #[derive(Debug, Subcommand)]
 pub enum Command {
@@ -49,6 +56,9 @@ pub enum Command {
     /// The deepest depth and its uncertainty budget, term by term
     #[command(after_help = DEEPEST_EXAMPLES)]
     Deepest(DeepestArgs),
+    /// What was understood of a log: columns, units, legs, gaps, deck, suspect samples
+    #[command(after_help = INSPECT_EXAMPLES)]
+    Inspect(InspectArgs),
     /// A cast sheet to fill in, prefilled from the logs
     #[command(after_help = SHEET_EXAMPLES)]
     Sheet(SheetArgs),
@@ -85,12 +95,41 @@ pub struct SheetArgs {
     /// Logs that the sheet is to name; none prints a blank sheet
     #[arg(value_name = "LOG")]
     pub logs: Vec<String>,
-    /// What a column is: ROLE=NAME or ROLE=NAME:UNIT, NAME also a column number (repeatable)
-    #[arg(long, value_name = "ROLE=NAME[:UNIT]")]
-    pub column: Vec<String>,
-    /// A mark for missing values, besides the usual ones (repeatable)
-    #[arg(long, value_name = "TEXT", allow_hyphen_values = true)]
-    pub missing: Vec<String>,
+    /// How to read them.
+    #[command(flatten)]
+    pub reading: ReadingArgs,
+}
+
+/// `seaplumb inspect`.
+#[derive(Debug, Args)]
+pub struct InspectArgs {
+    /// Logs to read; '-' is standard input
+    #[arg(required = true, value_name = "LOG")]
+    pub logs: Vec<String>,
+    /// Form of the result
+    #[arg(long, value_enum, default_value_t = InspectFormat::Text, help_heading = "Output")]
+    pub format: InspectFormat,
+    /// List every suspect sample
+    #[arg(long, help_heading = "Output")]
+    pub samples: bool,
+    /// No notes on standard error; errors still show
+    #[arg(long, short, help_heading = "Output")]
+    pub quiet: bool,
+    /// How to read them.
+    #[command(flatten)]
+    pub reading: ReadingArgs,
+    /// Their pressure.
+    #[command(flatten)]
+    pub sensor: SensorArgs,
+}
+
+/// Forms of what was understood.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub enum InspectFormat {
+    /// For people
+    Text,
+    /// All figures
+    Json,
 }
 
 /// Forms of a depth series.
@@ -176,6 +215,31 @@ pub enum CompositionArg {
     Reference,
 }
 
+/// What must be said to read a log.
+#[derive(Debug, Args)]
+pub struct ReadingArgs {
+    /// What a column is: ROLE=NAME or ROLE=NAME:UNIT, NAME also a column number (repeatable)
+    #[arg(long, value_name = "ROLE=NAME[:UNIT]", help_heading = "Log")]
+    pub column: Vec<String>,
+    /// A mark for missing values, besides the usual ones (repeatable)
+    #[arg(long, value_name = "TEXT", allow_hyphen_values = true, help_heading = "Log")]
+    pub missing: Vec<String>,
+}
+
+/// What must be said of the pressure sensor and the air above it.
+#[derive(Debug, Args)]
+pub struct SensorArgs {
+    /// From where the pressure counts [default: what the log says, else sea]
+    #[arg(long, value_enum, value_name = "KIND", help_heading = "Log")]
+    pub pressure: Option<PressureArg>,
+    /// Zero offset: 'auto' takes it from the deck, 'none' leaves readings as they are, or dbar to subtract [default: auto]
+    #[arg(long, value_name = "auto|none|DBAR", allow_negative_numbers = true, help_heading = "Log")]
+    pub tare: Option<String>,
+    /// Air pressure at the sea surface [default: 1013.25]
+    #[arg(long, value_name = "HPA", help_heading = "Surface and datum")]
+    pub air_pressure: Option<f64>,
+}
+
 /// Options of every command that reduces logs.
 #[derive(Debug, Args)]
 pub struct SharedArgs {
@@ -187,25 +251,19 @@ pub struct SharedArgs {
     #[arg(long, value_name = "FILE")]
     pub sheet: Option<PathBuf>,
 
+    /// How to read the logs.
+    #[command(flatten)]
+    pub reading: ReadingArgs,
+    /// Their pressure.
+    #[command(flatten)]
+    pub sensor: SensorArgs,
+
     /// Latitude of the cast, north positive; else the log's
     #[arg(long, value_name = "DEGREES", allow_negative_numbers = true, help_heading = "Place")]
     pub lat: Option<f64>,
     /// Longitude of the cast, east positive; else the log's
     #[arg(long, value_name = "DEGREES", allow_negative_numbers = true, help_heading = "Place")]
     pub lon: Option<f64>,
-
-    /// What a column is: ROLE=NAME or ROLE=NAME:UNIT, NAME also a column number (repeatable)
-    #[arg(long, value_name = "ROLE=NAME[:UNIT]", help_heading = "Log")]
-    pub column: Vec<String>,
-    /// A mark for missing values, besides the usual ones (repeatable)
-    #[arg(long, value_name = "TEXT", allow_hyphen_values = true, help_heading = "Log")]
-    pub missing: Vec<String>,
-    /// From where the pressure counts [default: what the log says, else sea]
-    #[arg(long, value_enum, value_name = "KIND", help_heading = "Log")]
-    pub pressure: Option<PressureArg>,
-    /// Zero offset: 'auto' takes it from the deck, 'none' leaves readings as they are, or dbar to subtract [default: auto]
-    #[arg(long, value_name = "auto|none|DBAR", allow_negative_numbers = true, help_heading = "Log")]
-    pub tare: Option<String>,
 
     /// Leg that the water column is taken from [default: down]
     #[arg(long, value_enum, help_heading = "Water")]
@@ -222,9 +280,6 @@ pub struct SharedArgs {
     #[arg(long, value_enum, help_heading = "Water")]
     pub eos: Option<EosArg>,
 
-    /// Air pressure at the sea surface [default: 1013.25]
-    #[arg(long, value_name = "HPA", help_heading = "Surface and datum")]
-    pub air_pressure: Option<f64>,
     /// Height of the water above the datum [default: 0]
     #[arg(long, value_name = "M", allow_negative_numbers = true, help_heading = "Surface and datum")]
     pub water_level: Option<f64>,

@@ -1,6 +1,7 @@
 //! The command line: what was typed becomes a request, the request becomes results.
 
 mod args;
+mod inspect;
 mod output;
 mod request;
 mod run;

@@ -1,6 +1,8 @@
 //! From what was typed to what is meant.
 
-use super::args::{CompositionArg, EosArg, ExtraArg, LegArg, PressureArg, SharedArgs};
+use super::args::{
+    CompositionArg, EosArg, ExtraArg, LegArg, PressureArg, ReadingArgs, SensorArgs, SharedArgs,
+};
 use crate::cast::TareChoice;
 use crate::gravity::SurfaceGravity;
 use crate::log::{ColumnChoice, PressureKind, ReadOptions};
@@ -18,33 +20,43 @@ use std::collections::BTreeMap;
 pub struct CallError(pub String);
 
 /// Reads the options about reading.
-pub(super) fn read_options(columns: &[String], missing: &[String]) -> Result<ReadOptions, CallError> {
-    let columns = columns
+pub(super) fn read_options(args: &ReadingArgs) -> Result<ReadOptions, CallError> {
+    let columns = args
+        .column
         .iter()
         .map(|text| text.parse::<ColumnChoice>().map_err(|e| CallError(format!("--column {text}: {e}"))))
         .collect::<Result<_, _>>()?;
-    Ok(ReadOptions { columns, missing: missing.to_vec() })
+    Ok(ReadOptions { columns, missing: args.missing.clone() })
+}
+
+/// Refuses standard input named twice.
+pub(super) fn standard_input_once(logs: &[String]) -> Result<(), CallError> {
+    if logs.iter().filter(|log| *log == "-").count() > 1 {
+        return Err(CallError("standard input ('-') can be read once only".to_string()));
+    }
+    Ok(())
 }
 
 /// All that the options say of casts.
 pub(super) fn layer(args: &SharedArgs) -> Result<Layer, CallError> {
     Ok(Layer {
-        reading: read_options(&args.column, &args.missing)?,
+        reading: read_options(&args.reading)?,
         settings: settings(args)?,
         profile: args.profile.clone(),
     })
 }
 
-fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
-    let within = |option: &str, value: Option<f64>, range: Range| match value {
+/// A number that was typed, when it lies in the range that makes sense.
+fn within(option: &str, value: Option<f64>, range: Range) -> Result<Option<f64>, CallError> {
+    match value {
         Some(v) if !range.holds(v) => Err(CallError(format!("{option} {v}: expected {range}"))),
         _ => Ok(value),
-    };
-    let anomaly = within("--gravity-anomaly", args.gravity_anomaly, range::SURFACE_GRAVITY)?;
-    let disturbance = within("--gravity-disturbance", args.gravity_disturbance, range::SURFACE_GRAVITY)?;
+    }
+}
+
+/// What the options say of the sensor and the air above it.
+pub(super) fn sensor_settings(args: &SensorArgs) -> Result<Settings, CallError> {
     Ok(Settings {
-        latitude_deg: within("--lat", args.lat, range::LATITUDE)?,
-        longitude_deg: within("--lon", args.lon, range::LONGITUDE)?,
         pressure_kind: args.pressure.map(|kind| match kind {
             PressureArg::Absolute => PressureKind::Absolute,
             PressureArg::Sea => PressureKind::Sea,
@@ -52,6 +64,16 @@ fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
         }),
         air_pressure_hpa: within("--air-pressure", args.air_pressure, range::AIR_PRESSURE)?,
         tare: args.tare.as_deref().map(tare).transpose()?,
+        ..Settings::default()
+    })
+}
+
+fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
+    let anomaly = within("--gravity-anomaly", args.gravity_anomaly, range::SURFACE_GRAVITY)?;
+    let disturbance = within("--gravity-disturbance", args.gravity_disturbance, range::SURFACE_GRAVITY)?;
+    Ok(Settings {
+        latitude_deg: within("--lat", args.lat, range::LATITUDE)?,
+        longitude_deg: within("--lon", args.lon, range::LONGITUDE)?,
         leg: args.leg.map(|leg| match leg {
             LegArg::Down => LegChoice::Down,
             LegArg::Up => LegChoice::Up,
@@ -75,7 +97,7 @@ fn settings(args: &SharedArgs) -> Result<Settings, CallError> {
         reference_below_sensor_m: within("--reference-below", args.reference_below, range::REFERENCE_BELOW)?,
         uncertainties: uncertainties(&args.uncertainty)?,
         coverage_probability: within("--coverage", args.coverage, range::COVERAGE)?,
-        ..Settings::default()
+        ..sensor_settings(&args.sensor)?
     })
 }
 

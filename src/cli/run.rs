@@ -73,6 +73,7 @@ pub fn run(cli: &Cli, out: &mut dyn Write, notes: &mut dyn Write) -> Result<Exit
             reduce_all(&args.shared, report.as_mut(), say, out, notes)
         }
         Command::Sheet(args) => sheet::print(args, out, notes),
+        Command::Inspect(args) => super::inspect::inspect(args, out, notes),
     }
 }
 
@@ -90,9 +91,7 @@ fn reduce_all(
         Some(sheet) if args.logs.is_empty() => sheet.logs()?,
         _ => args.logs.clone(),
     };
-    if sources.iter().filter(|log| *log == "-").count() > 1 {
-        return Err(CallError("standard input ('-') can be read once only".to_string()).into());
-    }
+    request::standard_input_once(&sources)?;
     if args.into.is_none() && sources.len() > 1 && !report.holds_many() {
         let text = "several logs make several tables: give a folder for them, --into DIR, or --format json";
         return Err(CallError(text.to_string()).into());
@@ -113,7 +112,7 @@ fn reduce_all(
     let mut begun = false;
     let mut failed = 0;
     for Job { source, reading, settings } in &jobs {
-        let logs = match log::read(source, reading) {
+        let logs = match log::read_each(source, reading) {
             Ok(logs) => logs,
             Err(error) => {
                 failed += 1;
@@ -129,7 +128,7 @@ fn reduce_all(
             return Err(CallError(text).into());
         }
         for log in logs {
-            match Reduction::new(log, settings) {
+            match log.and_then(|log| Reduction::new(log, settings)) {
                 Ok(reduction) => {
                     match &mut folder {
                         Some(folder) => folder.cast(report, &reduction)?,

@@ -18,7 +18,7 @@ pub(super) fn print(
     if args.logs.iter().any(|log| log == "-") {
         return Err(CallError("standard input ('-') has no name that a sheet could hold".to_string()).into());
     }
-    let reading = request::read_options(&args.column, &args.missing)?;
+    let reading = request::read_options(&args.reading)?;
     let mut code = ExitCode::SUCCESS;
     let mut casts = Vec::with_capacity(args.logs.len());
     for source in &args.logs {

@@ -212,7 +212,9 @@ fn no_pressure(file: &str, noun: &str, fields: &[Field]) -> LogError {
     } else {
         format!("say which is pressure: --column {example}")
     };
-    LogError::new(file, format!("no {noun} looks like pressure; the {noun}s are {labels}")).remedy(remedy)
+    LogError::new(file, format!("no {noun} looks like pressure; the {noun}s are {labels}"))
+        .remedy(remedy)
+        .foreign()
 }
 
 fn unit_is(field: &Field, role: Role) -> bool {

@@ -17,14 +17,14 @@ pub(super) fn read(input: &Input, options: &ReadOptions) -> Result<Vec<Log>, Log
     let file = input.name.as_str();
     let Some(text) = input.text() else {
         return Err(LogError::new(file, "this is neither text nor NetCDF")
-            .remedy("give a delimited text log, a WHP-Exchange CTD file or a NetCDF file"));
+            .remedy("give a delimited text log, a WHP-Exchange CTD file or a NetCDF file")
+            .foreign());
     };
     let text = text.as_ref();
     let marks = Marks::new(options);
     let Some(mut dialect) = dialect::detect(text, options, &marks) else {
-        return Err(LogError::new(file, "no row of numbers was found").remedy(
-            "a log has one sample per line, its cells parted by commas, semicolons, tabs or blanks",
-        ));
+        let remedy = "a log has one sample per line, its cells parted by commas, semicolons, tabs or blanks";
+        return Err(LogError::new(file, "no row of numbers was found").remedy(remedy).foreign());
     };
     look_at_values(text, &mut dialect, &marks);
     let picks = match columns::resolve(file, "column", &dialect.fields, options) {
@@ -54,7 +54,7 @@ pub(super) fn read(input: &Input, options: &ReadOptions) -> Result<Vec<Log>, Log
 }
 
 /// Looks at the first cells of every column, to tell stamps from numbers.
-fn look_at_values(text: &[u8], dialect: &mut Dialect, marks: &Marks) {
+pub(super) fn look_at_values(text: &[u8], dialect: &mut Dialect, marks: &Marks) {
     const ROWS: usize = 50;
     let mut stamps = time::StampParser::default();
     let mut settled = vec![false; dialect.fields.len()];
@@ -99,16 +99,19 @@ fn no_header(file: &str, text: &[u8], dialect: &Dialect, error: &LogError) -> Lo
     let line = text[dialect.first_byte..].split(|&b| b == b'\n').next().unwrap_or_default();
     let width = dialect.fields.len();
     let problem = format!("no header line names the {width} columns ({})", error.problem);
-    LogError::new(file, problem).at(Place::line(dialect.first_line, &decode(line))).remedy(format!(
-        "name the columns by their numbers, for example --column pressure={}:dbar",
-        2.min(width)
-    ))
+    LogError::new(file, problem)
+        .at(Place::line(dialect.first_line, &decode(line)))
+        .remedy(format!(
+            "name the columns by their numbers, for example --column pressure={}:dbar",
+            2.min(width)
+        ))
+        .foreign()
 }
 
 /// What is done with every column, and what becomes of it.
-struct Plan {
+pub(super) struct Plan {
     picks: Picks,
-    actions: Vec<Action>,
+    pub actions: Vec<Action>,
     /// Role, slot of its values in the rows, unit.
     numbers: Vec<(Role, usize, Unit)>,
     flags: Vec<(Role, usize)>,
@@ -130,7 +133,7 @@ enum TimePlan {
 }
 
 impl Plan {
-    fn new(
+    pub fn new(
         file: &str,
         fields: &[Field],
         mut picks: Picks,
@@ -195,7 +198,7 @@ impl Plan {
         Ok(Self { picks, actions, numbers, flags, time })
     }
 
-    fn into_log(
+    pub fn into_log(
         self,
         file: &str,
         dialect: Dialect,
@@ -230,7 +233,22 @@ impl Plan {
                     axis::counted(std::mem::take(&mut rows.numbers[*slot]), unit, *since, rows.start)
                 }
             };
-            Some(TimeAxis { elapsed_s: axis.0, start: axis.1, name: fields[pick.index].label.clone() })
+            Some(TimeAxis {
+                elapsed_s: axis.0,
+                start: axis.1,
+                name: fields[pick.index].label.clone(),
+                unit: match &self.time {
+                    TimePlan::Counted { unit, since, .. } => {
+                        unit.name.clone() + if since.is_some() { " since a date" } else { "" }
+                    }
+                    TimePlan::Absolute { dated: false } => "time of day".to_string(),
+                    TimePlan::Absolute { .. } if self.picks.date.is_some() => {
+                        "date and time of day".to_string()
+                    }
+                    _ => "ISO 8601".to_string(),
+                },
+                recognised_by: columns::recognised_by(pick),
+            })
         });
         if rows.stamps_without_offset {
             warnings.push(Warning::new(

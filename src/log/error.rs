@@ -59,18 +59,27 @@ pub struct LogError {
     pub problem: String,
     /// What settles it: an option to type, a thing to check.
     pub remedy: Option<String>,
+    /// Whether the file is no log at all (a text without numbers, a picture), so that nobody misses it among logs.
+    pub(super) foreign: bool,
 }
 
 impl LogError {
     /// An error about the whole of `file`.
     pub fn new(file: impl Into<String>, problem: impl Into<String>) -> Self {
-        Self { file: file.into(), place: None, problem: problem.into(), remedy: None }
+        Self { file: file.into(), place: None, problem: problem.into(), remedy: None, foreign: false }
     }
 
     /// The same error, with what settles it.
     #[must_use]
     pub fn remedy(mut self, remedy: impl Into<String>) -> Self {
         self.remedy = Some(remedy.into());
+        self
+    }
+
+    /// The same error, about a file that is no log at all.
+    #[must_use]
+    pub(super) fn foreign(mut self) -> Self {
+        self.foreign = true;
         self
     }
 

@@ -7,15 +7,10 @@ use std::path::Path;
 use super::LogError;
 
 /// Inflated logs larger than this are refused: 1 GiB is two weeks of 24 samples a second.
-const INFLATED_LIMIT: u64 = 1 << 30;
+pub(super) const INFLATED_LIMIT: u64 = 1 << 30;
 
 /// Beginnings of files that are no logs, and what to do with them.
 const FOREIGN: &[(&[u8], &str, &str)] = &[
-    (
-        b"PK\x03\x04",
-        "a zip archive (or a spreadsheet workbook)",
-        "unpack it, or save the sheet as CSV, and give that file",
-    ),
     (b"BZh", "a bzip2 archive", "unpack it with bunzip2 and give that file"),
     (b"\xfd7zXZ\x00", "an xz archive", "unpack it with xz -d and give that file"),
     (b"\x28\xb5\x2f\xfd", "a zstd archive", "unpack it with zstd -d and give that file"),
@@ -51,12 +46,19 @@ impl Input {
 
     /// Takes bytes that are already in memory; inflates them when they begin like gzip.
     pub fn from_bytes(name: &str, bytes: Vec<u8>) -> Result<Self, LogError> {
-        let bytes = if bytes.starts_with(&[0x1f, 0x8b]) { inflate(name, &bytes)? } else { bytes };
+        Self::within(name, bytes, INFLATED_LIMIT)
+    }
+
+    /// The same, where gzip may inflate to `limit` bytes at most.
+    pub fn within(name: &str, bytes: Vec<u8>, limit: u64) -> Result<Self, LogError> {
+        let bytes = if bytes.starts_with(&[0x1f, 0x8b]) { inflate(name, &bytes, limit)? } else { bytes };
         if bytes.iter().all(u8::is_ascii_whitespace) {
-            return Err(LogError::new(name, "the log is empty").remedy("check that it was copied completely"));
+            return Err(LogError::new(name, "the log is empty")
+                .remedy("check that it was copied completely")
+                .foreign());
         }
         if let Some((_, what, remedy)) = FOREIGN.iter().find(|(magic, ..)| bytes.starts_with(magic)) {
-            return Err(LogError::new(name, format!("this is {what}, not a log")).remedy(*remedy));
+            return Err(LogError::new(name, format!("this is {what}, not a log")).remedy(*remedy).foreign());
         }
         Ok(Self { name: name.to_string(), bytes })
     }
@@ -92,12 +94,14 @@ pub(super) fn decode(bytes: &[u8]) -> Cow<'_, str> {
     }
 }
 
-fn inflate(name: &str, bytes: &[u8]) -> Result<Vec<u8>, LogError> {
+fn inflate(name: &str, bytes: &[u8], limit: u64) -> Result<Vec<u8>, LogError> {
     let mut inflated = Vec::new();
-    let read = flate2::read::MultiGzDecoder::new(bytes).take(INFLATED_LIMIT + 1).read_to_end(&mut inflated);
+    let read =
+        flate2::read::MultiGzDecoder::new(bytes).take(limit.saturating_add(1)).read_to_end(&mut inflated);
     match read {
-        Ok(length) if length as u64 > INFLATED_LIMIT => {
-            Err(LogError::new(name, "the gzip file inflates to more than 1 GiB")
+        Ok(length) if length as u64 > limit => {
+            let limit = limit >> 20;
+            Err(LogError::new(name, format!("the gzip file inflates to more than {limit} MiB"))
                 .remedy("inflate it with gunzip and give the file that comes out"))
         }
         Ok(_) => Ok(inflated),

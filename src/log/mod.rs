@@ -4,6 +4,7 @@
 //! channels are always in the units that [`Role::unit`] names, in the order of the file, with
 //! missing values as NaN. Nothing is dropped and nothing is judged here.
 
+mod archive;
 mod axis;
 mod cell;
 mod choice;
@@ -23,10 +24,11 @@ mod role;
 mod rows;
 mod time;
 mod unit;
+mod whp;
 
 pub(crate) use error::picture;
 pub use error::{LogError, Place};
-pub use format::{read, read_bytes};
+pub use format::{read, read_bytes, read_each};
 
 use crate::warning::Warning;
 
@@ -137,6 +139,10 @@ pub struct TimeAxis {
     pub start: Option<jiff::Timestamp>,
     /// Name of the column or variable in the log.
     pub name: String,
+    /// Unit in the log, or how its stamps are written, as it was understood.
+    pub unit: String,
+    /// How name and unit were recognised, for people.
+    pub recognised_by: String,
 }
 
 /// Where a cast was taken, in degrees, north and east positive.

@@ -234,7 +234,7 @@ fn remarks(out: &mut dyn Write, r: &Reduction) -> io::Result<()> {
 }
 
 /// Seconds as hours, minutes, seconds.
-fn clock(seconds: f64) -> String {
+pub(super) fn clock(seconds: f64) -> String {
     if !seconds.is_finite() {
         return "unknown time".to_string();
     }
@@ -247,12 +247,12 @@ fn clock(seconds: f64) -> String {
     }
 }
 
-fn bullet(text: &str) -> String {
+pub(super) fn bullet(text: &str) -> String {
     wrapped(text, "    ").replacen("    ", "  - ", 1)
 }
 
 /// Text broken at blanks to lines of 78 characters, each behind `indent`.
-fn wrapped(text: &str, indent: &str) -> String {
+pub(super) fn wrapped(text: &str, indent: &str) -> String {
     let mut lines = vec![indent.to_string()];
     for word in text.split_whitespace() {
         let last = lines.len() - 1;

@@ -4,6 +4,8 @@ mod deepest_csv;
 mod deepest_json;
 mod deepest_text;
 mod extra;
+mod inspect_json;
+mod inspect_text;
 mod number;
 mod series_csv;
 mod series_json;
@@ -12,9 +14,12 @@ pub use deepest_csv::DeepestCsv;
 pub use deepest_json::DeepestJson;
 pub use deepest_text::DeepestText;
 pub use extra::Extra;
+pub use inspect_json::InspectJson;
+pub use inspect_text::InspectText;
 pub use series_csv::SeriesCsv;
 pub use series_json::SeriesJson;
 
+use crate::inspection::Inspection;
 use crate::reduction::Reduction;
 use std::io::{self, Write};
 
@@ -49,4 +54,25 @@ pub trait Report {
     fn holds_many(&self) -> bool {
         true
     }
+}
+
+/// A way to write what was understood of logs: begun once, one log after the other, ended once.
+pub trait InspectReport {
+    /// What stands before the first log.
+    ///
+    /// # Errors
+    /// Those of the writer.
+    fn begin(&mut self, out: &mut dyn Write) -> io::Result<()>;
+
+    /// One log.
+    ///
+    /// # Errors
+    /// Those of the writer.
+    fn cast(&mut self, out: &mut dyn Write, inspection: &Inspection) -> io::Result<()>;
+
+    /// What stands after the last log.
+    ///
+    /// # Errors
+    /// Those of the writer.
+    fn end(&mut self, out: &mut dyn Write) -> io::Result<()>;
 }

@@ -317,7 +317,14 @@ impl Source<'_> {
                 let (unit, since) = columns::time_unit(self.file, "variable", &self.fields, pick)?;
                 let since = since.filter(|_| self.usual_calendar(variable, &mut Vec::new()));
                 let (elapsed_s, start) = axis::counted(values[range].to_vec(), &unit, since, None);
-                Ok((Some(TimeAxis { elapsed_s, start, name: variable.name.clone() }), start))
+                let axis = TimeAxis {
+                    elapsed_s,
+                    start,
+                    name: variable.name.clone(),
+                    unit: unit.name + if since.is_some() { " since a date" } else { "" },
+                    recognised_by: columns::recognised_by(pick),
+                };
+                Ok((Some(axis), start))
             }
         }
     }
