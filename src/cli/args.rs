@@ -319,6 +319,9 @@ pub struct SharedArgs {
     /// Write one result per log into this folder, and cruise.csv
     #[arg(long, value_name = "DIR", help_heading = "Output")]
     pub into: Option<PathBuf>,
+    /// Logs reduced at a time [default: the number of cores]
+    #[arg(long, value_name = "N", help_heading = "Output")]
+    pub jobs: Option<usize>,
     /// Replace results that are there already
     #[arg(long, requires = "into", help_heading = "Output")]
     pub replace: bool,

@@ -10,7 +10,7 @@ use std::path::{Path, PathBuf};
 use tempfile::NamedTempFile;
 
 /// Name of the table of all casts.
-const CRUISE: &str = "cruise.csv";
+pub(super) const CRUISE: &str = "cruise.csv";
 
 /// Results in a folder: one file per cast and the table of the cruise. A file appears whole or not at all.
 pub(super) struct Folder {

@@ -2,7 +2,7 @@
 
 mod error;
 mod keys;
-mod pattern;
+pub(crate) mod pattern;
 mod read;
 mod scope;
 mod template;

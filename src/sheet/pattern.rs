@@ -3,13 +3,13 @@
 use std::path::{Component, Path, PathBuf};
 
 /// Whether a path holds `*` (any characters of one name) or `?` (one character).
-pub(super) fn is_pattern(path: &str) -> bool {
+pub(crate) fn is_pattern(path: &str) -> bool {
     path.contains(['*', '?'])
 }
 
 /// The files that `pattern` names, counted from `folder`, sorted. A path without `*` and `?`, or one that is there as
 /// it is written, names itself.
-pub(super) fn files(folder: &Path, pattern: &str) -> Vec<PathBuf> {
+pub(crate) fn files(folder: &Path, pattern: &str) -> Vec<PathBuf> {
     let plain = folder.join(pattern);
     if !is_pattern(pattern) || plain.exists() {
         return vec![plain];
