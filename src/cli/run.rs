@@ -7,7 +7,9 @@ use crate::cast::{Cast, CastSettings, TareChoice};
 use crate::column::{Salt, Water, WaterNode, bin_means};
 use crate::log::{self, LogError, PressureKind, ReadOptions};
 use crate::reduction::Reduction;
-use crate::report::{DeepestCsv, DeepestJson, DeepestText, Report, SeriesCsv, SeriesJson};
+use crate::report::{
+    DeepestCsv, DeepestJson, DeepestText, Provenance, Report, SeriesCsv, SeriesJson, SeriesNetcdf,
+};
 use crate::settings::{OtherCast, STANDARD_AIR_HPA, Settings};
 use std::io::{self, BufWriter, Write};
 use std::process::ExitCode;
@@ -52,6 +54,15 @@ pub fn run(cli: &Cli, out: &mut dyn Write, notes: &mut dyn Write) -> Result<Exit
             let mut report: Box<dyn Report> = match args.format {
                 SeriesFormat::Csv => Box::new(SeriesCsv),
                 SeriesFormat::Json => Box::<SeriesJson>::default(),
+                SeriesFormat::Netcdf if cli.invocation.to_terminal && args.shared.into.is_none() => {
+                    let text = "--format netcdf is not for a terminal: send it to a file (> depth.nc) or a folder, --into DIR";
+                    return Err(CallError(text.to_string()).into());
+                }
+                SeriesFormat::Netcdf => {
+                    // To the second: nobody needs to know when to the nanosecond.
+                    let time = jiff::Timestamp::from_second(jiff::Timestamp::now().as_second()).ok();
+                    Box::new(SeriesNetcdf::new(Provenance { call: cli.invocation.call.clone(), time }))
+                }
             };
             reduce_all(&args.shared, report.as_mut(), true, out, notes)
         }

@@ -3,15 +3,20 @@
 mod deepest_csv;
 mod deepest_json;
 mod deepest_text;
+mod netcdf_classic;
 mod number;
+mod provenance;
 mod series_csv;
 mod series_json;
+mod series_netcdf;
 
 pub use deepest_csv::DeepestCsv;
 pub use deepest_json::DeepestJson;
 pub use deepest_text::DeepestText;
+pub use provenance::Provenance;
 pub use series_csv::SeriesCsv;
 pub use series_json::SeriesJson;
+pub use series_netcdf::SeriesNetcdf;
 
 use crate::reduction::Reduction;
 use std::io::{self, Write};

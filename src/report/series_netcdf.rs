@@ -1,0 +1,263 @@
+//! Depth at every sample, as NetCDF by the CF conventions 1.11.
+
+use super::netcdf_classic::{Attributes, Data, Dimension, Encoding, FILL_DOUBLE, Variable};
+use super::provenance::{PROGRAM, Provenance};
+use super::{CAUTION, Report};
+use crate::cast::Leg;
+use crate::log::{Flag, Log};
+use crate::reduction::Reduction;
+use jiff::Timestamp;
+use std::io::{self, Write};
+
+/// One file per cast: the variables `time`, `pressure`, `depth`, `u_depth`, `density`, `leg` and `flag` along the dimension
+/// `obs`, one value per sample of the log in its order and unrounded; position, station and start as single values; the
+/// deepest depth, its uncertainty, the water, what was assumed and noticed as global attributes.
+///
+/// The file is a CF `profile` where position and start are known, as that feature demands; else it carries no feature type.
+#[derive(Debug, Default)]
+pub struct SeriesNetcdf {
+    provenance: Provenance,
+}
+
+const REFERENCES: &str = "\
+IOC, SCOR and IAPSO (2010), The international thermodynamic equation of seawater - 2010, IOC Manuals and Guides 56; \
+JCGM 100:2008, Guide to the expression of uncertainty in measurement; \
+IOC (2013), Quality flag standard, IOC Manuals and Guides 54, volume 3";
+
+/// The legs in the order of their numbers.
+const LEGS: [Leg; 4] = [Leg::Deck, Leg::Down, Leg::Bottom, Leg::Up];
+/// The flags in the order of their numbers, and their words.
+const FLAGS: [(Flag, &str); 5] = [
+    (Flag::Good, "good"),
+    (Flag::NotEvaluated, "not_evaluated"),
+    (Flag::Questionable, "questionable"),
+    (Flag::Bad, "bad"),
+    (Flag::Missing, "missing"),
+];
+
+impl SeriesNetcdf {
+    /// With the call that makes the files.
+    pub fn new(provenance: Provenance) -> Self {
+        Self { provenance }
+    }
+
+    fn global(&self, r: &Reduction, is_profile: bool) -> Attributes {
+        let lines = |lines: Vec<String>| lines.join("\n");
+        Attributes::default()
+            .with("Conventions", "CF-1.11")
+            .with("featureType", if is_profile { "profile" } else { "" })
+            .with("title", format!("Depth at each sample of {}, with its standard uncertainty", r.log.source))
+            .with("source", source(&r.log))
+            .with("history", self.provenance.history())
+            .with("references", REFERENCES)
+            .with("comment", CAUTION)
+            .with("log", r.log.source.as_str())
+            .with("datum", r.datum.as_str())
+            .with("water", r.water_words.as_str())
+            .with("deepest_depth_m", r.deepest_m)
+            .with("deepest_depth_expanded_uncertainty_m", r.budget.expanded_uncertainty_m())
+            .with("coverage_probability", r.budget.coverage_probability)
+            .with("coverage_factor", r.budget.coverage_factor)
+            .with("assumptions", lines(r.assumptions.clone()))
+            .with("warnings", lines(r.warnings.iter().map(ToString::to_string).collect()))
+    }
+}
+
+impl Report for SeriesNetcdf {
+    fn extension(&self) -> &'static str {
+        "nc"
+    }
+
+    fn begin(&mut self, _out: &mut dyn Write) -> io::Result<()> {
+        Ok(())
+    }
+
+    fn cast(&mut self, out: &mut dyn Write, r: &Reduction) -> io::Result<()> {
+        // A time column without a single time tells nothing.
+        let times = r.log.time.as_ref().filter(|t| t.elapsed_s.iter().any(|s| s.is_finite()));
+        let start = times.map_or(r.log.start, |t| t.start.or(r.log.start));
+        let station = r.log.station.as_deref().filter(|s| !s.is_empty());
+        let is_profile = r.longitude_deg.is_some() && start.is_some();
+        let known = [
+            ("time", times.is_some()),
+            ("start_time", start.is_some()),
+            ("depth", true),
+            ("latitude", true),
+            ("longitude", r.longitude_deg.is_some()),
+            ("station", station.is_some()),
+        ];
+        let coordinates: Vec<&str> =
+            known.iter().filter(|(_, is_known)| *is_known).map(|(name, _)| *name).collect();
+        let coordinates = coordinates.join(" ");
+        // A sample is costly and gives three variables, which the format wants one after the other.
+        let [mut depth, mut u_depth, mut density] = [(); 3].map(|()| Vec::with_capacity(r.len()));
+        for sample in (0..r.len()).map(|i| r.sample(i)) {
+            depth.push(sample.depth_m);
+            u_depth.push(sample.u_depth_m);
+            density.push(sample.density_kg_m3);
+        }
+
+        let mut file = Encoding::new(self.global(r, is_profile));
+        let obs = Some(file.dimension("obs", r.len()));
+        if let Some(times) = times {
+            file.variable(doubles("time", obs, of_time(start), times.elapsed_s.iter().copied()));
+        }
+        if start.is_some() {
+            let attributes = of_time(start).with("long_name", "start of the cast").with("axis", "T");
+            file.variable(doubles("start_time", None, attributes, std::iter::once(0.0)));
+        }
+        file.variable(doubles("depth", obs, of_depth(r), depth));
+        position(&mut file, r);
+        if let Some(station) = station {
+            let letters = file.dimension("station_letters", station.len());
+            let role = if is_profile { "profile_id" } else { "" };
+            let attributes = Attributes::default()
+                .with("long_name", "station")
+                .with("cf_role", role)
+                .with("_Encoding", "utf-8");
+            let data = Data::Text(station.to_string());
+            file.variable(Variable { name: "station", dimension: Some(letters), attributes, data });
+        }
+        let of = |attributes: Attributes| attributes.with("coordinates", coordinates.as_str());
+        file.variable(doubles("pressure", obs, of(of_pressure()), r.cast.pressure_dbar.iter().copied()));
+        file.variable(doubles("u_depth", obs, of(of_u_depth()), u_depth));
+        file.variable(doubles("density", obs, of(of_density()), density));
+        file.variable(bytes("leg", obs, of(of_leg()), (0..r.len()).map(|i| leg_number(r.cast.legs.of(i)))));
+        file.variable(bytes("flag", obs, of(of_flag()), (0..r.len()).map(|i| r.cast.flag(i).code() as i8)));
+        file.write(out)
+    }
+
+    fn end(&mut self, _out: &mut dyn Write) -> io::Result<()> {
+        Ok(())
+    }
+
+    fn holds_many(&self) -> bool {
+        false
+    }
+}
+
+fn doubles<'a>(
+    name: &'static str,
+    dimension: Option<Dimension>,
+    attributes: Attributes,
+    values: impl IntoIterator<Item = f64, IntoIter: 'a>,
+) -> Variable<'a> {
+    // A single value is there or its variable is not.
+    let attributes =
+        if dimension.is_some() { attributes.with("_FillValue", FILL_DOUBLE) } else { attributes };
+    Variable { name, dimension, attributes, data: Data::Doubles(Box::new(values.into_iter())) }
+}
+
+fn bytes<'a>(
+    name: &'static str,
+    dimension: Option<Dimension>,
+    attributes: Attributes,
+    values: impl Iterator<Item = i8> + 'a,
+) -> Variable<'a> {
+    Variable { name, dimension, attributes, data: Data::Bytes(Box::new(values)) }
+}
+
+fn position(file: &mut Encoding, r: &Reduction) {
+    let latitude = Attributes::default()
+        .with("standard_name", "latitude")
+        .with("long_name", "latitude of the cast")
+        .with("units", "degrees_north")
+        .with("axis", "Y");
+    file.variable(doubles("latitude", None, latitude, std::iter::once(r.latitude_deg)));
+    if let Some(longitude_deg) = r.longitude_deg {
+        let longitude = Attributes::default()
+            .with("standard_name", "longitude")
+            .with("long_name", "longitude of the cast")
+            .with("units", "degrees_east")
+            .with("axis", "X");
+        file.variable(doubles("longitude", None, longitude, std::iter::once(longitude_deg)));
+    }
+}
+
+/// Elapsed seconds: a time by CF when they count from a known one.
+fn of_time(start: Option<Timestamp>) -> Attributes {
+    match start {
+        Some(start) => Attributes::default()
+            .with("standard_name", "time")
+            .with("units", format!("seconds since {start}"))
+            .with("calendar", "standard"),
+        None => Attributes::default().with("units", "s"),
+    }
+}
+
+fn of_depth(r: &Reduction) -> Attributes {
+    let point = match r.model.place.reference_below_sensor_m {
+        0.0 => "of the pressure sensor".to_string(),
+        below => format!("of the reference point, {below} m below the pressure sensor"),
+    };
+    Attributes::default()
+        .with("standard_name", "depth")
+        .with("long_name", format!("depth {point} below the {}", r.datum))
+        .with("units", "m")
+        .with("positive", "down")
+        .with("axis", "Z")
+        .with("datum", r.datum.as_str())
+        .with("ancillary_variables", "u_depth flag")
+}
+
+fn of_u_depth() -> Attributes {
+    Attributes::default()
+        .with("standard_name", "depth standard_error")
+        .with("long_name", "standard uncertainty of depth, all terms of the budget combined")
+        .with("units", "m")
+}
+
+fn of_pressure() -> Attributes {
+    Attributes::default()
+        .with("standard_name", "sea_water_pressure_due_to_sea_water")
+        .with("long_name", "sea pressure after calibration and tare")
+        .with("units", "dbar")
+        .with("ancillary_variables", "flag")
+}
+
+fn of_density() -> Attributes {
+    Attributes::default()
+        .with("standard_name", "sea_water_density")
+        .with("long_name", "in-situ density by TEOS-10")
+        .with("units", "kg m-3")
+        .with("ancillary_variables", "flag")
+}
+
+fn of_leg() -> Attributes {
+    let numbers: Vec<i8> = LEGS.map(leg_number).to_vec();
+    Attributes::default()
+        .with("long_name", "part of the cast")
+        .with("flag_values", numbers.as_slice())
+        .with("flag_meanings", LEGS.map(Leg::name).join(" "))
+}
+
+fn of_flag() -> Attributes {
+    let numbers: Vec<i8> = FLAGS.iter().map(|(flag, _)| flag.code() as i8).collect();
+    Attributes::default()
+        .with("standard_name", "quality_flag")
+        .with("long_name", "quality flag of the sample")
+        .with("flag_values", numbers.as_slice())
+        .with("flag_meanings", FLAGS.map(|(_, word)| word).join(" "))
+        .with("conventions", "IOC Manuals and Guides 54, volume 3 (54:V3), primary level")
+}
+
+fn leg_number(leg: Leg) -> i8 {
+    match leg {
+        Leg::Deck => 0,
+        Leg::Down => 1,
+        Leg::Bottom => 2,
+        Leg::Up => 3,
+    }
+}
+
+/// How the data came about: what was measured, and what made depths of it.
+fn source(log: &Log) -> String {
+    let measured = [
+        ("pressure", true),
+        ("conductivity", log.conductivity.is_some()),
+        ("salinity", log.salinity.is_some()),
+        ("temperature", log.temperature.is_some()),
+    ];
+    let measured: Vec<&str> = measured.iter().filter(|(_, there)| *there).map(|(name, _)| *name).collect();
+    format!("log of {} ({}), reduced by {PROGRAM}", measured.join(", "), log.format)
+}
