@@ -42,11 +42,12 @@ impl SeriesNetcdf {
     }
 
     fn global(&self, r: &Reduction, is_profile: bool) -> Attributes {
-        let lines = |lines: Vec<String>| lines.join("\n");
+        let name = r.log.source.rsplit(['/', '\\']).next().unwrap_or_default();
+        let warnings: Vec<String> = r.warnings.iter().map(ToString::to_string).collect();
         Attributes::default()
             .with("Conventions", "CF-1.11")
             .with("featureType", if is_profile { "profile" } else { "" })
-            .with("title", format!("Depth at each sample of {}, with its standard uncertainty", r.log.source))
+            .with("title", format!("Depth at each sample of {}, with its standard uncertainty", name))
             .with("source", source(&r.log))
             .with("history", self.provenance.history())
             .with("references", REFERENCES)
@@ -58,8 +59,8 @@ impl SeriesNetcdf {
             .with("deepest_depth_expanded_uncertainty_m", r.budget.expanded_uncertainty_m())
             .with("coverage_probability", r.budget.coverage_probability)
             .with("coverage_factor", r.budget.coverage_factor)
-            .with("assumptions", lines(r.assumptions.clone()))
-            .with("warnings", lines(r.warnings.iter().map(ToString::to_string).collect()))
+            .with("assumptions", r.assumptions.join("\n"))
+            .with("warnings", warnings.join("\n"))
     }
 }
 
@@ -100,7 +101,10 @@ impl Report for SeriesNetcdf {
         let mut file = Encoding::new(self.global(r, is_profile));
         let obs = Some(file.dimension("obs", r.len()));
         if let Some(times) = times {
-            file.variable(doubles("time", obs, of_time(start), times.elapsed_s.iter().copied()));
+            let long_name =
+                if start.is_some() { "time of the sample" } else { "time since the first sample" };
+            let attributes = of_time(start).with("long_name", long_name);
+            file.variable(doubles("time", obs, attributes, times.elapsed_s.iter().copied()));
         }
         if start.is_some() {
             let attributes = of_time(start).with("long_name", "start of the cast").with("axis", "T");
@@ -180,7 +184,9 @@ fn of_time(start: Option<Timestamp>) -> Attributes {
         Some(start) => Attributes::default()
             .with("standard_name", "time")
             .with("units", format!("seconds since {start}"))
-            .with("calendar", "standard"),
+            .with("calendar", "standard")
+            // Whether the clock of the instrument knew of leap seconds, no log tells.
+            .with("units_metadata", "leap_seconds: unknown"),
         None => Attributes::default().with("units", "s"),
     }
 }
@@ -188,7 +194,7 @@ fn of_time(start: Option<Timestamp>) -> Attributes {
 fn of_depth(r: &Reduction) -> Attributes {
     let point = match r.model.place.reference_below_sensor_m {
         0.0 => "of the pressure sensor".to_string(),
-        below => format!("of the reference point, {below} m below the pressure sensor"),
+        below => format!("of the reference point ({below} m below the pressure sensor)"),
     };
     Attributes::default()
         .with("standard_name", "depth")
@@ -260,4 +266,174 @@ fn source(log: &Log) -> String {
     ];
     let measured: Vec<&str> = measured.iter().filter(|(_, there)| *there).map(|(name, _)| *name).collect();
     format!("log of {} ({}), reduced by {PROGRAM}", measured.join(", "), log.format)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::log::{ReadOptions, read_bytes};
+    use crate::settings::Settings;
+    use netcdf_reader::{NcAttrValue, NcFile};
+
+    /// A cast down and up in steps of 5 dbar, with one missing pressure and one missing time.
+    fn rows(time: impl Fn(usize) -> String) -> String {
+        (0..41).fold(String::new(), |mut text, i: usize| {
+            let pressure = if i == 7 { String::new() } else { (5 * i.min(40 - i) + 5).to_string() };
+            text.push_str(&format!("{}{pressure};35.0;4.0\n", time(i)));
+            text
+        })
+    }
+
+    fn reduced(header: &str, rows: &str, settings: &Settings) -> Reduction {
+        let text = format!("{header}pressure_dbar;practical_salinity;temperature_degC\n{rows}");
+        let mut logs = read_bytes("a/cast 1.csv", text.into_bytes(), &ReadOptions::default()).unwrap();
+        Reduction::new(logs.remove(0), settings).unwrap()
+    }
+
+    fn stamped(settings: &Settings) -> Reduction {
+        let stamp = |i| match i {
+            3 => ";".to_string(),
+            _ => format!("2026-03-01T10:00:{i:02}.5Z;"),
+        };
+        reduced("time;", &rows(stamp), settings)
+    }
+
+    fn at(latitude_deg: f64, longitude_deg: Option<f64>) -> Settings {
+        Settings { latitude_deg: Some(latitude_deg), longitude_deg, ..Settings::default() }
+    }
+
+    fn written(r: &Reduction) -> NcFile {
+        let mut out = Vec::new();
+        let time = Timestamp::from_second(0).ok();
+        SeriesNetcdf::new(Provenance { call: "seaplumb reduce x".to_string(), time })
+            .cast(&mut out, r)
+            .unwrap();
+        NcFile::from_vec(out).unwrap()
+    }
+
+    fn text(file: &NcFile, variable: &str, attribute: &str) -> String {
+        let variable = file.variable(variable).unwrap();
+        variable.attribute(attribute).map_or(String::new(), |a| a.value.as_string().unwrap())
+    }
+
+    fn global(file: &NcFile, attribute: &str) -> String {
+        file.global_attribute(attribute).map_or(String::new(), |a| a.value.as_string().unwrap())
+    }
+
+    /// Every value, missing ones as NaN.
+    fn values(file: &NcFile, name: &str) -> Vec<f64> {
+        file.read_variable_unpacked_masked(name).unwrap().into_raw_vec_and_offset().0
+    }
+
+    /// To the bit, so that NaN equals NaN.
+    fn assert_same(file: &NcFile, name: &str, expected: impl Iterator<Item = f64>) {
+        let bits = |x: f64| if x.is_nan() { None } else { Some(x.to_bits()) };
+        let read: Vec<_> = values(file, name).into_iter().map(bits).collect();
+        assert_eq!(read, expected.map(bits).collect::<Vec<_>>(), "{name}");
+    }
+
+    #[test]
+    fn every_sample_comes_back() {
+        let r = stamped(&at(-31.5, Some(-176.2)));
+        let file = written(&r);
+        let samples = || (0..r.len()).map(|i| r.sample(i));
+        assert_eq!(file.dimension("obs").unwrap().size, 41);
+        assert_same(&file, "time", samples().map(|s| s.time_s));
+        assert_same(&file, "pressure", samples().map(|s| s.pressure_dbar));
+        assert_same(&file, "depth", samples().map(|s| s.depth_m));
+        assert_same(&file, "u_depth", samples().map(|s| s.u_depth_m));
+        assert_same(&file, "density", samples().map(|s| s.density_kg_m3));
+        assert_same(&file, "flag", samples().map(|s| f64::from(s.flag.code())));
+        let words = text(&file, "leg", "flag_meanings");
+        let words: Vec<&str> = words.split(' ').collect();
+        let legs: Vec<&str> = values(&file, "leg").iter().map(|&number| words[number as usize]).collect();
+        assert_eq!(legs, samples().map(|s| s.leg.name()).collect::<Vec<_>>());
+        // The log has one of each kind of gap, or the comparison above would prove less.
+        assert!(values(&file, "time")[3].is_nan() && values(&file, "depth")[7].is_nan());
+        assert_eq!(values(&file, "flag")[7], 9.0);
+        assert_eq!(values(&file, "latitude"), [-31.5]);
+        assert_eq!(values(&file, "longitude"), [-176.2]);
+    }
+
+    #[test]
+    fn attributes_are_those_of_the_conventions() {
+        let settings = Settings {
+            datum: Some("mean sea level".to_string()),
+            water_level_m: Some(0.4),
+            reference_below_sensor_m: Some(0.85),
+            ..at(-31.5, Some(-176.2))
+        };
+        let r = stamped(&settings);
+        let file = written(&r);
+        assert_eq!(global(&file, "Conventions"), "CF-1.11");
+        assert_eq!(global(&file, "featureType"), "profile");
+        assert_eq!(
+            global(&file, "title"),
+            "Depth at each sample of cast 1.csv, with its standard uncertainty"
+        );
+        assert_eq!(global(&file, "log"), "a/cast 1.csv");
+        assert_eq!(global(&file, "history"), format!("1970-01-01T00:00:00Z {PROGRAM}: seaplumb reduce x"));
+        assert_eq!(global(&file, "datum"), "mean sea level");
+        let number = |name| file.global_attribute(name).unwrap().value.as_f64().unwrap();
+        assert_eq!(number("deepest_depth_m"), r.deepest_m);
+        assert_eq!(number("deepest_depth_expanded_uncertainty_m"), r.budget.expanded_uncertainty_m());
+        assert_eq!(number("coverage_probability"), 0.95);
+        let long_name =
+            "depth of the reference point (0.85 m below the pressure sensor) below the mean sea level";
+        for (variable, attribute, expected) in [
+            ("time", "standard_name", "time"),
+            ("time", "units", "seconds since 2026-03-01T10:00:00.5Z"),
+            ("start_time", "axis", "T"),
+            ("depth", "standard_name", "depth"),
+            ("depth", "long_name", long_name),
+            ("depth", "units", "m"),
+            ("depth", "positive", "down"),
+            ("depth", "axis", "Z"),
+            ("depth", "ancillary_variables", "u_depth flag"),
+            ("u_depth", "standard_name", "depth standard_error"),
+            ("pressure", "standard_name", "sea_water_pressure_due_to_sea_water"),
+            ("pressure", "units", "dbar"),
+            ("density", "standard_name", "sea_water_density"),
+            ("density", "units", "kg m-3"),
+            ("latitude", "units", "degrees_north"),
+            ("longitude", "units", "degrees_east"),
+            ("flag", "standard_name", "quality_flag"),
+            ("flag", "flag_meanings", "good not_evaluated questionable bad missing"),
+        ] {
+            assert_eq!(text(&file, variable, attribute), expected, "{variable}:{attribute}");
+        }
+        for variable in ["pressure", "u_depth", "density", "leg", "flag"] {
+            let coordinates = text(&file, variable, "coordinates");
+            assert_eq!(coordinates, "time start_time depth latitude longitude", "{variable}");
+        }
+        let numbers = &file.variable("flag").unwrap().attribute("flag_values").unwrap().value;
+        assert_eq!(*numbers, NcAttrValue::Bytes(vec![1, 2, 3, 4, 9]));
+    }
+
+    #[test]
+    fn what_is_not_known_is_left_out() {
+        let r = reduced("", &rows(|_| String::new()), &at(10.0, None));
+        let file = written(&r);
+        for variable in ["time", "start_time", "longitude", "station"] {
+            assert!(file.variable(variable).is_err(), "{variable}");
+        }
+        assert_eq!(global(&file, "featureType"), "");
+        assert_eq!(text(&file, "leg", "coordinates"), "depth latitude");
+
+        let r = reduced("time_s;", &rows(|i| format!("{i};")), &at(10.0, Some(3.0)));
+        let file = written(&r);
+        assert_eq!(text(&file, "time", "units"), "s");
+        assert_eq!(text(&file, "time", "standard_name"), "");
+        assert!(file.variable("start_time").is_err());
+        assert_eq!(global(&file, "featureType"), "");
+    }
+
+    #[test]
+    fn a_station_is_the_profile() {
+        let mut r = stamped(&at(-31.5, Some(-176.2)));
+        r.log.station = Some("Süd 7/2".to_string());
+        let file = written(&r);
+        assert_eq!(file.read_variable_as_string("station").unwrap(), "Süd 7/2");
+        assert_eq!(text(&file, "station", "cf_role"), "profile_id");
+    }
 }
