@@ -3,6 +3,7 @@
 mod deepest_csv;
 mod deepest_json;
 mod deepest_text;
+mod netcdf_attributes;
 mod netcdf_classic;
 mod number;
 mod provenance;

@@ -1,12 +1,12 @@
 //! Depth at every sample, as NetCDF by the CF conventions 1.11.
 
+use super::netcdf_attributes::{
+    leg_number, of_density, of_depth, of_flag, of_leg, of_pressure, of_time, of_u_depth, source,
+};
 use super::netcdf_classic::{Attributes, Data, Dimension, Encoding, FILL_DOUBLE, Variable};
-use super::provenance::{PROGRAM, Provenance};
+use super::provenance::Provenance;
 use super::{CAUTION, Report};
-use crate::cast::Leg;
-use crate::log::{Flag, Log};
 use crate::reduction::Reduction;
-use jiff::Timestamp;
 use std::io::{self, Write};
 
 /// One file per cast: the variables `time`, `pressure`, `depth`, `u_depth`, `density`, `leg` and `flag` along the dimension
@@ -23,17 +23,6 @@ const REFERENCES: &str = "\
 IOC, SCOR and IAPSO (2010), The international thermodynamic equation of seawater - 2010, IOC Manuals and Guides 56; \
 JCGM 100:2008, Guide to the expression of uncertainty in measurement; \
 IOC (2013), Quality flag standard, IOC Manuals and Guides 54, volume 3";
-
-/// The legs in the order of their numbers.
-const LEGS: [Leg; 4] = [Leg::Deck, Leg::Down, Leg::Bottom, Leg::Up];
-/// The flags in the order of their numbers, and their words.
-const FLAGS: [(Flag, &str); 5] = [
-    (Flag::Good, "good"),
-    (Flag::NotEvaluated, "not_evaluated"),
-    (Flag::Questionable, "questionable"),
-    (Flag::Bad, "bad"),
-    (Flag::Missing, "missing"),
-];
 
 impl SeriesNetcdf {
     /// With the call that makes the files.
@@ -101,9 +90,11 @@ impl Report for SeriesNetcdf {
         let mut file = Encoding::new(self.global(r, is_profile));
         let obs = Some(file.dimension("obs", r.len()));
         if let Some(times) = times {
-            let long_name =
-                if start.is_some() { "time of the sample" } else { "time since the first sample" };
-            let attributes = of_time(start).with("long_name", long_name);
+            let long_name = match times.start {
+                Some(_) => "time of the sample",
+                None => "time since the first sample",
+            };
+            let attributes = of_time(times.start).with("long_name", long_name);
             file.variable(doubles("time", obs, attributes, times.elapsed_s.iter().copied()));
         }
         if start.is_some() {
@@ -178,101 +169,13 @@ fn position(file: &mut Encoding, r: &Reduction) {
     }
 }
 
-/// Elapsed seconds: a time by CF when they count from a known one.
-fn of_time(start: Option<Timestamp>) -> Attributes {
-    match start {
-        Some(start) => Attributes::default()
-            .with("standard_name", "time")
-            .with("units", format!("seconds since {start}"))
-            .with("calendar", "standard")
-            // Whether the clock of the instrument knew of leap seconds, no log tells.
-            .with("units_metadata", "leap_seconds: unknown"),
-        None => Attributes::default().with("units", "s"),
-    }
-}
-
-fn of_depth(r: &Reduction) -> Attributes {
-    let point = match r.model.place.reference_below_sensor_m {
-        0.0 => "of the pressure sensor".to_string(),
-        below => format!("of the reference point ({below} m below the pressure sensor)"),
-    };
-    Attributes::default()
-        .with("standard_name", "depth")
-        .with("long_name", format!("depth {point} below the {}", r.datum))
-        .with("units", "m")
-        .with("positive", "down")
-        .with("axis", "Z")
-        .with("datum", r.datum.as_str())
-        .with("ancillary_variables", "u_depth flag")
-}
-
-fn of_u_depth() -> Attributes {
-    Attributes::default()
-        .with("standard_name", "depth standard_error")
-        .with("long_name", "standard uncertainty of depth, all terms of the budget combined")
-        .with("units", "m")
-}
-
-fn of_pressure() -> Attributes {
-    Attributes::default()
-        .with("standard_name", "sea_water_pressure_due_to_sea_water")
-        .with("long_name", "sea pressure after calibration and tare")
-        .with("units", "dbar")
-        .with("ancillary_variables", "flag")
-}
-
-fn of_density() -> Attributes {
-    Attributes::default()
-        .with("standard_name", "sea_water_density")
-        .with("long_name", "in-situ density by TEOS-10")
-        .with("units", "kg m-3")
-        .with("ancillary_variables", "flag")
-}
-
-fn of_leg() -> Attributes {
-    let numbers: Vec<i8> = LEGS.map(leg_number).to_vec();
-    Attributes::default()
-        .with("long_name", "part of the cast")
-        .with("flag_values", numbers.as_slice())
-        .with("flag_meanings", LEGS.map(Leg::name).join(" "))
-}
-
-fn of_flag() -> Attributes {
-    let numbers: Vec<i8> = FLAGS.iter().map(|(flag, _)| flag.code() as i8).collect();
-    Attributes::default()
-        .with("standard_name", "quality_flag")
-        .with("long_name", "quality flag of the sample")
-        .with("flag_values", numbers.as_slice())
-        .with("flag_meanings", FLAGS.map(|(_, word)| word).join(" "))
-        .with("conventions", "IOC Manuals and Guides 54, volume 3 (54:V3), primary level")
-}
-
-fn leg_number(leg: Leg) -> i8 {
-    match leg {
-        Leg::Deck => 0,
-        Leg::Down => 1,
-        Leg::Bottom => 2,
-        Leg::Up => 3,
-    }
-}
-
-/// How the data came about: what was measured, and what made depths of it.
-fn source(log: &Log) -> String {
-    let measured = [
-        ("pressure", true),
-        ("conductivity", log.conductivity.is_some()),
-        ("salinity", log.salinity.is_some()),
-        ("temperature", log.temperature.is_some()),
-    ];
-    let measured: Vec<&str> = measured.iter().filter(|(_, there)| *there).map(|(name, _)| *name).collect();
-    format!("log of {} ({}), reduced by {PROGRAM}", measured.join(", "), log.format)
-}
-
 #[cfg(test)]
 mod tests {
+    use super::super::provenance::PROGRAM;
     use super::*;
     use crate::log::{ReadOptions, read_bytes};
     use crate::settings::Settings;
+    use jiff::Timestamp;
     use netcdf_reader::{NcAttrValue, NcFile};
 
     /// A cast down and up in steps of 5 dbar, with one missing pressure and one missing time.
@@ -426,6 +329,14 @@ mod tests {
         assert_eq!(text(&file, "time", "standard_name"), "");
         assert!(file.variable("start_time").is_err());
         assert_eq!(global(&file, "featureType"), "");
+
+        // The start of the cast need not be the time of the first sample.
+        let mut r = r;
+        r.log.start = Timestamp::from_second(7).ok();
+        let file = written(&r);
+        assert_eq!(text(&file, "time", "units"), "s");
+        assert_eq!(text(&file, "start_time", "units"), "seconds since 1970-01-01T00:00:07Z");
+        assert_eq!(global(&file, "featureType"), "profile");
     }
 
     #[test]
