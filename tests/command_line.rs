@@ -233,6 +233,51 @@ fn results_into_a_folder() {
 }
 
 #[test]
+fn netcdf_into_a_folder_and_into_a_pipe() {
+    let dir = tempfile::tempdir().expect("a folder");
+    let into = dir.path().join("out").display().to_string();
+    let log = path("lander-dive.csv");
+    let args = ["reduce", &log, "--lat", "-19.4", "--lon", "-131.7", "--format", "netcdf", "--quiet"];
+    let mut to_folder = args.to_vec();
+    to_folder.extend_from_slice(&["--into", &into]);
+    let output = seaplumb(&to_folder);
+    assert!(output.status.success(), "{}", text(&output.stderr));
+    let in_folder = std::fs::read(dir.path().join("out/lander-dive.nc")).expect("lander-dive.nc");
+    let piped = seaplumb(&args);
+    assert!(piped.status.success(), "{}", text(&piped.stderr));
+
+    for (bytes, call) in [(in_folder, &to_folder[..]), (piped.stdout, &args)] {
+        // Whole: 25 651 samples of five doubles and two bytes, the bytes rounded up to fours, behind the header.
+        let values = 25_651 * 5 * 8 + 2 * 25_652;
+        assert!(bytes.len() > values && bytes.len() < values + 8_192, "{}", bytes.len());
+        let file = netcdf_reader::NcFile::from_vec(bytes).expect("NetCDF");
+        for (name, samples) in [("time", 25_651), ("depth", 25_651), ("flag", 25_651), ("latitude", 1)] {
+            assert_eq!(file.read_variable_as_f64(name).expect(name).len(), samples, "{name}");
+        }
+        let history = file.global_attribute("history").expect("history").value.as_string().expect("text");
+        assert!(history.ends_with(&format!(": seaplumb {}", call.join(" "))), "{history}");
+    }
+    says(&refused(&to_folder, 2), &["--replace"]);
+    says(&refused(&["reduce", &log, &log, "--lat", "0", "--format", "netcdf"], 2), &["--into DIR"]);
+    // The help breaks its lines where it likes.
+    let help = text(&seaplumb(&["reduce", "--help"]).stdout);
+    let help = help.split_whitespace().collect::<Vec<_>>().join(" ");
+    says(&help, &["netcdf: CF-1.11", "with --into DIR, or standard output into a file or pipe"]);
+}
+
+#[test]
+fn netcdf_is_not_for_a_terminal() {
+    use clap::Parser;
+    use seaplumb::cli::{Cli, run};
+    let mut cli = Cli::parse_from(["seaplumb", "reduce", &path("lander-dive.csv"), "--format", "netcdf"]);
+    cli.invocation.to_terminal = true;
+    let (mut out, mut notes) = (Vec::new(), Vec::new());
+    let failure = run(&cli, &mut out, &mut notes).expect_err("a refusal");
+    says(&failure.to_string(), &["not for a terminal", "> depth.nc", "--into DIR"]);
+    assert!(out.is_empty() && notes.is_empty());
+}
+
+#[test]
 fn standard_input_is_a_log() {
     let bytes = std::fs::read(demo("salinity-cast.csv")).expect("the demo");
     let run = |args: &[&str]| {

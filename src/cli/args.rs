@@ -1,5 +1,6 @@
 //! What can be typed. One definition makes the parser and the help.
 
+use super::invocation::Invocation;
 use clap::{Args, Parser, Subcommand, ValueEnum};
 use std::path::PathBuf;
 
@@ -10,6 +11,9 @@ pub struct Cli {
     /// What to do.
     #[command(subcommand)]
     pub command: Command,
+    /// How the program was called.
+    #[arg(skip)]
+    pub invocation: Invocation,
 }
 
 const AFTER_HELP: &str = "\
@@ -26,6 +30,7 @@ const REDUCE_EXAMPLES: &str = "\
 Examples:
   seaplumb reduce dive.csv --lat -31.52 --lon -176.18 > depth.csv
   seaplumb reduce dive.csv.gz --lat -31.52 --pressure absolute --air-pressure 1009.3 --format json
+  seaplumb reduce dive.csv --lat -31.52 --lon -176.18 --format netcdf > depth.nc
   seaplumb reduce cruise/*.nc --into depths";
 
 const DEEPEST_EXAMPLES: &str = "\
@@ -139,6 +144,8 @@ pub enum SeriesFormat {
     Csv,
     /// One array per column
     Json,
+    /// CF-1.11 NetCDF, one file per cast: with --into DIR, or standard output into a file or pipe
+    Netcdf,
 }
 
 /// Further columns of a depth series.

@@ -4,6 +4,7 @@ mod args;
 mod batch;
 mod in_order;
 mod inspect;
+mod invocation;
 mod output;
 mod profile;
 mod request;
@@ -12,4 +13,5 @@ mod sheet;
 mod sources;
 
 pub use args::Cli;
+pub use invocation::Invocation;
 pub use run::{Failure, run};

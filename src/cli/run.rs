@@ -4,7 +4,9 @@ use super::args::{Cli, Command, DeepestFormat, SeriesFormat};
 use super::batch::reduce_all;
 use super::request::{self, CallError};
 use super::sheet;
-use crate::report::{DeepestCsv, DeepestJson, DeepestText, Report, SeriesCsv, SeriesJson};
+use crate::report::{
+    DeepestCsv, DeepestJson, DeepestText, Provenance, Report, SeriesCsv, SeriesJson, SeriesNetcdf,
+};
 use crate::sheet::SheetError;
 use std::io::{self, Write};
 use std::process::ExitCode;
@@ -52,6 +54,15 @@ pub fn run(cli: &Cli, out: &mut dyn Write, notes: &mut dyn Write) -> Result<Exit
             let mut report: Box<dyn Report> = match args.format {
                 SeriesFormat::Csv => Box::new(SeriesCsv { with: request::extras(&args.with) }),
                 SeriesFormat::Json => Box::new(SeriesJson::with(request::extras(&args.with))),
+                SeriesFormat::Netcdf if cli.invocation.to_terminal && args.shared.into.is_none() => {
+                    let text = "--format netcdf is not for a terminal: send it to a file (> depth.nc) or a folder, --into DIR";
+                    return Err(CallError(text.to_string()).into());
+                }
+                SeriesFormat::Netcdf => {
+                    // To the second: nobody needs to know when to the nanosecond.
+                    let time = jiff::Timestamp::from_second(jiff::Timestamp::now().as_second()).ok();
+                    Box::new(SeriesNetcdf::new(Provenance { call: cli.invocation.call.clone(), time }))
+                }
             };
             reduce_all(&args.shared, report.as_mut(), true, out, notes)
         }

@@ -6,9 +6,13 @@ mod deepest_text;
 mod extra;
 mod inspect_json;
 mod inspect_text;
+mod netcdf_attributes;
+mod netcdf_classic;
 mod number;
+mod provenance;
 mod series_csv;
 mod series_json;
+mod series_netcdf;
 
 pub use deepest_csv::DeepestCsv;
 pub use deepest_json::DeepestJson;
@@ -16,8 +20,10 @@ pub use deepest_text::DeepestText;
 pub use extra::Extra;
 pub use inspect_json::InspectJson;
 pub use inspect_text::InspectText;
+pub use provenance::Provenance;
 pub use series_csv::SeriesCsv;
 pub use series_json::SeriesJson;
+pub use series_netcdf::SeriesNetcdf;
 
 use crate::inspection::Inspection;
 use crate::reduction::Reduction;
