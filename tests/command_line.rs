@@ -277,6 +277,36 @@ fn netcdf_is_not_for_a_terminal() {
     assert!(out.is_empty() && notes.is_empty());
 }
 
+/// Conductivity without temperature once ended in a panic.
+#[test]
+fn conductivity_without_temperature_is_no_water() {
+    let rows: String = (0..300).map(|i| format!("{i},{},41.2\n", i.min(300 - i))).collect();
+    let output = Command::cargo_bin("seaplumb")
+        .expect("the program")
+        .args(["deepest", "-", "--lat", "10", "--format", "csv"])
+        .write_stdin(format!("time_s,pressure_dbar,conductivity_mS_cm\n{rows}"))
+        .output()
+        .expect("a run");
+    assert!(output.status.success(), "{}", text(&output.stderr));
+    says(&text(&output.stdout), &["standard_ocean"]);
+}
+
+/// A depth series in NetCDF is itself a log of pressures.
+#[test]
+fn our_own_netcdf_can_be_read_back() {
+    let dir = tempfile::tempdir().expect("a folder");
+    let into = dir.path().display().to_string();
+    let call = ["--lat", "-38.25", "--pressure", "absolute", "--air-pressure", "1014.8"];
+    let shelf = path("shelf-cast.csv");
+    let out = seaplumb(&[&["reduce", &shelf, "--format", "netcdf", "--into", &into], &call[..]].concat());
+    assert!(out.status.success(), "{}", text(&out.stderr));
+    let written = dir.path().join("shelf-cast.nc").display().to_string();
+    let again = seaplumb(&["inspect", &written, "--format", "json"]);
+    assert!(again.status.success(), "{}", text(&again.stderr));
+    let json: serde_json::Value = serde_json::from_slice(&again.stdout).expect("JSON");
+    assert_eq!(json["casts"][0]["samples"].as_u64(), Some(1821), "{json}");
+}
+
 #[test]
 fn standard_input_is_a_log() {
     let bytes = std::fs::read(demo("salinity-cast.csv")).expect("the demo");

@@ -260,7 +260,8 @@ impl<'a> Judge<'a> {
     }
 
     fn pump_off(&mut self) {
-        if self.log.conductivity.is_none() {
+        // Without temperature there is no salinity from conductivity.
+        if self.log.conductivity.is_none() || self.salinity.is_empty() {
             return;
         }
         for leg in [self.legs.range(Leg::Down), self.legs.range(Leg::Up)] {

@@ -36,7 +36,7 @@ pub(super) fn reduce_all(
         let text = "several logs make several tables: give a folder for them, --into DIR, or --format json";
         return Err(CallError(text.to_string()).into());
     }
-    let mut folder = args.into.as_deref().map(|dir| Folder::open(dir, args.replace)).transpose()?;
+    let mut folder = args.into.as_deref().map(|dir| Folder::open(dir, args.replace, &sources)).transpose()?;
     let jobs = jobs(&sources, &call, sheet.as_ref())?;
     if let Some(sheet) = sheet.as_ref().filter(|sheet| sheet.has_casts() && !args.quiet) {
         for source in sources.iter().filter(|source| !sheet.names(source)) {

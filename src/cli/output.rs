@@ -18,17 +18,20 @@ pub(super) struct Folder {
     replace: bool,
     names: BTreeSet<String>,
     cruise: Vec<u8>,
+    /// The logs, which no result may replace.
+    logs: BTreeSet<PathBuf>,
 }
 
 impl Folder {
     /// Makes the folder where it is not there, and refuses one whose table would be overwritten.
-    pub fn open(dir: &Path, replace: bool) -> io::Result<Self> {
+    pub fn open(dir: &Path, replace: bool, logs: &[String]) -> io::Result<Self> {
         fs::create_dir_all(dir)?;
         let mut folder = Self {
             dir: dir.to_path_buf(),
             replace,
             names: BTreeSet::from([CRUISE.to_string()]),
             cruise: Vec::new(),
+            logs: logs.iter().filter_map(|log| fs::canonicalize(log).ok()).collect(),
         };
         folder.refuse_existing(CRUISE)?;
         DeepestCsv.begin(&mut folder.cruise)?;
@@ -66,6 +69,10 @@ impl Folder {
 
     fn refuse_existing(&self, name: &str) -> io::Result<()> {
         let path = self.dir.join(name);
+        if fs::canonicalize(&path).is_ok_and(|path| self.logs.contains(&path)) {
+            let text = format!("{} is one of the logs; give another folder for the results", path.display());
+            return Err(io::Error::new(io::ErrorKind::AlreadyExists, text));
+        }
         if !self.replace && path.exists() {
             let text = format!("{} is there already; --replace overwrites it", path.display());
             return Err(io::Error::new(io::ErrorKind::AlreadyExists, text));
@@ -131,7 +138,7 @@ mod tests {
     #[test]
     fn names_never_collide() {
         let dir = tempfile::tempdir().unwrap();
-        let mut folder = Folder::open(dir.path(), false).unwrap();
+        let mut folder = Folder::open(dir.path(), false, &[]).unwrap();
         assert_eq!(folder.free_name("a/one.csv", "csv"), "one.csv");
         assert_eq!(folder.free_name("b/one.csv", "csv"), "one-2.csv");
         assert_eq!(folder.free_name("cruise.nc", "csv"), "cruise-2.csv");
@@ -140,7 +147,7 @@ mod tests {
     #[test]
     fn nothing_is_left_of_a_file_that_failed() {
         let dir = tempfile::tempdir().unwrap();
-        let folder = Folder::open(dir.path(), false).unwrap();
+        let folder = Folder::open(dir.path(), false, &[]).unwrap();
         let failed = folder.whole_file("x.csv", |out| {
             out.write_all(b"half")?;
             Err(io::Error::other("no more room"))
@@ -150,13 +157,24 @@ mod tests {
     }
 
     #[test]
+    fn no_result_replaces_a_log() {
+        let dir = tempfile::tempdir().unwrap();
+        let log = dir.path().join("x.csv");
+        fs::write(&log, "the only copy").unwrap();
+        let folder = Folder::open(dir.path(), true, &[log.display().to_string()]).unwrap();
+        let error = folder.whole_file("x.csv", |out| out.write_all(b"new")).unwrap_err();
+        assert!(error.to_string().contains("one of the logs"), "{error}");
+        assert_eq!(fs::read_to_string(&log).unwrap(), "the only copy");
+    }
+
+    #[test]
     fn existing_results_stay_unless_told() {
         let dir = tempfile::tempdir().unwrap();
         fs::write(dir.path().join("x.csv"), "old").unwrap();
-        let folder = Folder::open(dir.path(), false).unwrap();
+        let folder = Folder::open(dir.path(), false, &[]).unwrap();
         let error = folder.whole_file("x.csv", |out| out.write_all(b"new")).unwrap_err();
         assert!(error.to_string().contains("--replace"));
-        let folder = Folder::open(dir.path(), true).unwrap();
+        let folder = Folder::open(dir.path(), true, &[]).unwrap();
         folder.whole_file("x.csv", |out| out.write_all(b"new")).unwrap();
         assert_eq!(fs::read_to_string(dir.path().join("x.csv")).unwrap(), "new");
     }

@@ -61,7 +61,10 @@ pub fn run(cli: &Cli, out: &mut dyn Write, notes: &mut dyn Write) -> Result<Exit
                 SeriesFormat::Netcdf => {
                     // To the second: nobody needs to know when to the nanosecond.
                     let time = jiff::Timestamp::from_second(jiff::Timestamp::now().as_second()).ok();
-                    Box::new(SeriesNetcdf::new(Provenance { call: cli.invocation.call.clone(), time }))
+                    Box::new(SeriesNetcdf::new(
+                        Provenance { call: cli.invocation.call.clone(), time },
+                        request::extras(&args.with),
+                    ))
                 }
             };
             reduce_all(&args.shared, report.as_mut(), true, out, notes)

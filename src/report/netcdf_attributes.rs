@@ -1,5 +1,6 @@
 //! Attributes of the variables of a depth series, by the CF conventions 1.11 and their table of standard names.
 
+use super::extra::Extra;
 use super::netcdf_classic::Attributes;
 use super::provenance::PROGRAM;
 use crate::cast::Leg;
@@ -45,6 +46,26 @@ pub(super) fn of_depth(r: &Reduction) -> Attributes {
         .with("axis", "Z")
         .with("datum", r.datum.as_str())
         .with("ancillary_variables", "u_depth flag")
+}
+
+/// A further variable. Gravity and the mean of sound speed have no standard name.
+pub(super) fn of_extra(extra: Extra) -> Attributes {
+    let (standard_name, long_name, units) = match extra {
+        Extra::PracticalSalinity => ("sea_water_practical_salinity", "Practical Salinity", "1"),
+        Extra::AbsoluteSalinity => ("sea_water_absolute_salinity", "Absolute Salinity", "g kg-1"),
+        Extra::ConservativeTemperature => {
+            ("sea_water_conservative_temperature", "Conservative Temperature", "degree_C")
+        }
+        Extra::SoundSpeed => ("speed_of_sound_in_sea_water", "sound speed", "m s-1"),
+        Extra::MeanSoundSpeed => {
+            ("", "travel-time mean of sound speed from the sea surface to the sample", "m s-1")
+        }
+        Extra::Gravity => ("", "gravity", "m s-2"),
+    };
+    Attributes::default()
+        .with("standard_name", standard_name)
+        .with("long_name", long_name)
+        .with("units", units)
 }
 
 /// Standard uncertainty of depth in m.

@@ -1,7 +1,8 @@
 //! Depth at every sample, as NetCDF by the CF conventions 1.11.
 
+use super::extra::{Extra, Extras};
 use super::netcdf_attributes::{
-    leg_number, of_density, of_depth, of_flag, of_leg, of_pressure, of_time, of_u_depth, source,
+    leg_number, of_density, of_depth, of_extra, of_flag, of_leg, of_pressure, of_time, of_u_depth, source,
 };
 use super::netcdf_classic::{Attributes, Data, Dimension, Encoding, FILL_DOUBLE, Variable};
 use super::provenance::Provenance;
@@ -17,6 +18,7 @@ use std::io::{self, Write};
 #[derive(Debug, Default)]
 pub struct SeriesNetcdf {
     provenance: Provenance,
+    with: Vec<Extra>,
 }
 
 const REFERENCES: &str = "\
@@ -25,9 +27,9 @@ JCGM 100:2008, Guide to the expression of uncertainty in measurement; \
 IOC (2013), Quality flag standard, IOC Manuals and Guides 54, volume 3";
 
 impl SeriesNetcdf {
-    /// With the call that makes the files.
-    pub fn new(provenance: Provenance) -> Self {
-        Self { provenance }
+    /// With the call that makes the files, and further variables.
+    pub fn new(provenance: Provenance, with: Vec<Extra>) -> Self {
+        Self { provenance, with }
     }
 
     fn global(&self, r: &Reduction, is_profile: bool) -> Attributes {
@@ -119,6 +121,11 @@ impl Report for SeriesNetcdf {
         file.variable(doubles("density", obs, of(of_density()), density));
         file.variable(bytes("leg", obs, of(of_leg()), (0..r.len()).map(|i| leg_number(r.cast.legs.of(i)))));
         file.variable(bytes("flag", obs, of(of_flag()), (0..r.len()).map(|i| r.cast.flag(i).code() as i8)));
+        let extras = Extras::new(&self.with, r);
+        for extra in extras.columns() {
+            let values: Vec<f64> = (0..r.len()).map(|i| extras.value(extra, i)).collect();
+            file.variable(doubles(extra.name(), obs, of(of_extra(extra)), values));
+        }
         file.write(out)
     }
 
@@ -208,7 +215,7 @@ mod tests {
     fn written(r: &Reduction) -> NcFile {
         let mut out = Vec::new();
         let time = Timestamp::from_second(0).ok();
-        SeriesNetcdf::new(Provenance { call: "seaplumb reduce x".to_string(), time })
+        SeriesNetcdf::new(Provenance { call: "seaplumb reduce x".to_string(), time }, Extra::ALL.to_vec())
             .cast(&mut out, r)
             .unwrap();
         NcFile::from_vec(out).unwrap()

@@ -31,7 +31,8 @@ pub(super) fn read(input: &Input, options: &ReadOptions) -> Result<Vec<Log>, Log
     let marks = Marks::new(options);
     // Texts can be no quantity; they are looked at for the station only.
     let numeric: Vec<&Variable> = container.variables.iter().filter(|v| v.kind == Kind::Number).collect();
-    let fields: Vec<Field> = numeric.iter().map(|variable| field(variable)).collect();
+    let mut fields: Vec<Field> = numeric.iter().map(|variable| field(variable)).collect();
+    keep_times_of_samples(&numeric, &mut fields);
     let picks = columns::resolve(file, "variable", &fields, options)?;
     let Some(pick) = picks.of(Role::Pressure) else {
         return Err(LogError::new(file, "the log has no pressure"));
@@ -74,6 +75,25 @@ fn field(variable: &Variable) -> Field {
         unit,
         recognised,
         look: Look::Number,
+    }
+}
+
+/// A file may hold the time of every sample and, beside it, a nominal time of the cast: the one along the samples of the pressure is the
+/// time of the log.
+fn keep_times_of_samples(variables: &[&Variable], fields: &mut [Field]) {
+    let holds = |field: &Field, role| field.recognised.is_some_and(|r| r.meaning == Meaning::Role(role));
+    let long = |variable: &Variable| {
+        let dimensions = variable.dimensions.iter();
+        dimensions.filter(|(_, size)| *size > 1).map(|(name, _)| name.clone()).collect::<Vec<_>>()
+    };
+    let Some(pressure) = fields.iter().position(|field| holds(field, Role::Pressure)) else { return };
+    let samples = long(variables[pressure]);
+    let times: Vec<usize> = (0..fields.len()).filter(|&i| holds(&fields[i], Role::Time)).collect();
+    let along = |i: usize| long(variables[i]).iter().any(|name| samples.contains(name));
+    if times.len() > 1 && times.iter().any(|&i| along(i)) {
+        for i in times.into_iter().filter(|&i| !along(i)) {
+            fields[i].recognised = None;
+        }
     }
 }
 
