@@ -22,6 +22,9 @@ const WANDER_WITH_SALT_DBAR: f64 = 1.0;
 const WANDER_ALONE_DBAR: f64 = 0.15;
 /// How far the deck may read from what air should read, where pressure alone must tell.
 const OFFSET_ALONE_DBAR: f64 = 1.0;
+/// Absolute pressure of the air in dbar, from a hurricane to the strongest high, with room for the zero of the sensor: what a deck
+/// may read when nobody said that the sensor is absolute.
+pub(crate) const AIR_DBAR: std::ops::Range<f64> = 8.5..11.2;
 /// Fewer samples than this are no time on deck.
 const FEWEST: usize = 5;
 
@@ -46,8 +49,9 @@ pub(super) fn find(
                 salt < AIR_SHARE * water && (p - start_dbar).abs() < WANDER_WITH_SALT_DBAR
             }
             _ => {
-                (p - start_dbar).abs() < WANDER_ALONE_DBAR
-                    && (start_dbar - expected_dbar).abs() < OFFSET_ALONE_DBAR
+                let air =
+                    (start_dbar - expected_dbar).abs() < OFFSET_ALONE_DBAR || AIR_DBAR.contains(&start_dbar);
+                air && (p - start_dbar).abs() < WANDER_ALONE_DBAR
             }
         }
     };

@@ -11,6 +11,7 @@ mod suspect;
 mod tare;
 
 pub(crate) use blocks::median;
+pub(crate) use deck::AIR_DBAR;
 pub use deck::Deck;
 pub use legs::{Leg, Legs};
 pub use noise::Noise;

@@ -1,6 +1,7 @@
 //! The zero of the pressure sensor, from the time on deck.
 
 use super::blocks::{median, resolution, robust_deviation};
+use super::deck::AIR_DBAR;
 use super::{CastSettings, Deck};
 use crate::constants::{HPA_PER_DBAR, STANDARD_ATMOSPHERE_DBAR};
 use crate::log::{Log, LogError, PressureKind};
@@ -171,8 +172,10 @@ fn unbelievable(log: &Log, reading: f64, kind: PressureKind, kind_known: bool) -
         &log.source,
         format!("on deck the pressure reads {reading:.2} dbar, too far from zero {said}"),
     );
-    if (8.0..11.5).contains(&reading) && kind != PressureKind::Absolute {
-        error.remedy("that is the pressure of the air: --pressure absolute")
+    if AIR_DBAR.contains(&reading) && kind != PressureKind::Absolute {
+        error.remedy(
+            "that is the pressure of the air: --pressure absolute (if the log begins in the water: --tare 0)",
+        )
     } else {
         error.remedy(format!(
             "check the unit (--column pressure={}:UNIT) and the kind (--pressure absolute, sea or gauge), or give the offset: --tare DBAR",

@@ -239,6 +239,9 @@ impl Reader<'_> {
         let elsewhere: Vec<&str> =
             self.sections.iter().filter(|s| s.key(word).is_some()).map(|s| s.name).collect();
         let remedy = match elsewhere[..] {
+            [section] if section != UNCERTAINTY && table.contains("cast") => {
+                format!("it belongs in [cast.{section}]")
+            }
             [section] if section != UNCERTAINTY => format!("it belongs in [{section}]"),
             _ => format!("the nearest is '{}'; known are {}", nearest(word, names), names.join(", ")),
         };

@@ -1,6 +1,7 @@
 //! A sheet to fill in: every key with its meaning, and what the logs tell already filled in.
 
 use super::keys::{self, Key};
+use crate::cast::AIR_DBAR;
 use crate::cast::{Cast, CastSettings, TareBasis, TareChoice};
 use crate::constants::{HPA_PER_DBAR, STANDARD_ATMOSPHERE_DBAR};
 use crate::log::{Log, PressureKind, ReadOptions};
@@ -212,8 +213,7 @@ fn deck_words(deck: DeckReading, kind: Option<PressureKind>) -> String {
         [told(deck.before_dbar, "before"), told(deck.after_dbar, "after")].into_iter().flatten().collect();
     let mut text = format!("On deck the pressure reads {} the cast", parts.join(" and "));
     let reading = deck.before_dbar.or(deck.after_dbar).unwrap_or(0.0);
-    // Between the air of a hurricane and that of the strongest high, with some room for the zero of the sensor.
-    if kind.is_none() && (8.0..11.5).contains(&reading) {
+    if kind.is_none() && AIR_DBAR.contains(&reading) {
         text.push_str(": that is the air, so it seems to count from vacuum (\"absolute\")");
     }
     text + "."
