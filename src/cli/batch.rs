@@ -37,6 +37,9 @@ pub(super) fn reduce_all(
         return Err(CallError(text.to_string()).into());
     }
     let mut folder = args.into.as_deref().map(|dir| Folder::open(dir, args.replace, &sources)).transpose()?;
+    if let Some(folder) = &folder {
+        folder.refuse_known(&sources, report.extension())?;
+    }
     let jobs = jobs(&sources, &call, sheet.as_ref())?;
     if let Some(sheet) = sheet.as_ref().filter(|sheet| sheet.has_casts() && !args.quiet) {
         for source in sources.iter().filter(|source| !sheet.names(source)) {

@@ -40,6 +40,11 @@ impl Folder {
         Ok(folder)
     }
 
+    /// Refuses, before the work, what would be refused after it: a result of one of `logs` that is there already.
+    pub fn refuse_known(&self, logs: &[String], extension: &str) -> io::Result<()> {
+        logs.iter().try_for_each(|log| self.refuse_existing(&format!("{}.{extension}", stem(log))))
+    }
+
     /// Writes one cast and notes its row for the table.
     pub fn cast(&mut self, report: &mut dyn Report, reduction: &Reduction) -> io::Result<()> {
         let name = self.free_name(&reduction.log.source, report.extension());
