@@ -110,7 +110,7 @@ pub(super) fn sections() -> Vec<Section> {
         section("water", "The water that the pressure is turned into depth with.", WATER),
         Section {
             name: UNCERTAINTY,
-            about: "Standard uncertainty of any term of the budget, by its key. Those with a key of their own above are given once only.",
+            about: "Standard uncertainty of any term of the budget, by its key. What a key above (u_...) says already is not said here again.",
             keys: Term::ALL.map(of_term).to_vec().into(),
         },
     ]
@@ -166,11 +166,29 @@ const fn uncertainty(
 }
 
 fn of_term(term: Term) -> Key {
-    let example = match term {
-        Term::EquationOfState => "5.0",
-        _ => "0.01",
+    let (otherwise, example) = match term {
+        Term::PressureCalibration => ("0.0001 of the reading", "0.5"),
+        Term::PressureNoise => ("from the log", "0.01"),
+        Term::Tare => ("from the samples on deck, else 0.1", "0.02"),
+        Term::AirPressure => ("1 when the air pressure is given, else 10", "0.5"),
+        Term::TemperatureCalibration => ("0.002", "0.001"),
+        Term::ConductivityCalibration | Term::SalinityCalibration => ("0.003", "0.002"),
+        Term::SalinityComposition => ("0.005", "0.002"),
+        Term::EquationOfState => ("10 to 100 MPa, 20 beyond", "5.0"),
+        Term::ProfileRepresentativeness => {
+            ("from down leg against up leg, else a share of what density in situ does to depth", "0.1")
+        }
+        Term::SurfaceGap => ("from the log", "0.5"),
+        Term::SurfaceGravity => ("35", "8.0"),
+        Term::GravityGradient => ("50", "20.0"),
+        Term::GeoidHeight => ("30", "1.0"),
+        Term::Position => ("0.01", "0.005"),
+        Term::WaterLevel => ("0.3", "0.1"),
+        Term::ReferenceOffset => ("0.02", "0.01"),
+        Term::PeakEstimate => ("from the log", "0.01"),
+        Term::Integration => ("from halving the step", "0.001"),
     };
-    uncertainty(term.key(), term, term.meaning(), "as the budget of a result says", example)
+    uncertainty(term.key(), term, term.meaning(), otherwise, example)
 }
 
 const STATION: &[Key] = &[
@@ -439,6 +457,24 @@ mod tests {
         direct.sort_unstable();
         direct.dedup();
         assert_eq!(direct.len(), count, "[[cast]]");
+    }
+
+    #[test]
+    fn the_defaults_are_those_of_the_terms() {
+        let section = sections().pop().expect("the terms");
+        for term in Term::ALL {
+            let otherwise = section.key(term.key()).expect("a key").otherwise;
+            if let Some(assumed) = term.assumed() {
+                assert_eq!(otherwise, assumed.to_string(), "{}", term.key());
+            }
+        }
+        for key in sections().iter().flat_map(|s| s.keys.to_vec()) {
+            if let Kind::Uncertainty(term) = key.kind
+                && let Some(assumed) = term.assumed()
+            {
+                assert_eq!(key.otherwise, assumed.to_string(), "{}", key.name);
+            }
+        }
     }
 
     #[test]
