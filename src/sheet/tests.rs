@@ -115,6 +115,38 @@ fn logs_are_known_again() {
     assert!(!sheet.names(&path("casts/L.csv")) && !sheet.names("-"));
 }
 
+/// Whatever is done to a sheet, it is read or refused with a line that it has.
+#[test]
+fn damaged_sheets_are_refused_with_a_line() {
+    let mut whole = String::new();
+    for section in sections() {
+        whole.push_str(&format!("[{}]\n", section.name));
+        for key in section.keys.iter() {
+            whole.push_str(&format!("{} = {}\n", key.name, key.example));
+        }
+    }
+    whole.push_str("[[cast]]\nlog = \"ü.csv\"\n[cast.water]\nleg = \"up\"\n");
+    let mut tried = 0;
+    let mut try_it = |text: &str| {
+        tried += 1;
+        // Some keys of the whole exclude each other, and the profile is no file here: refused it must be.
+        let error = Sheet::from_text("s.toml", text, Path::new("")).err();
+        for fault in error.iter().flat_map(|error| &error.faults) {
+            let line = fault.place.as_ref().map_or(0, |place| place.line);
+            assert!((1..=text.lines().count() as u64 + 1).contains(&line), "{fault}\n{text}");
+        }
+        assert!(error.is_none_or(|error| !error.faults.is_empty()), "{text}");
+    };
+    try_it(&whole);
+    for (at, c) in whole.char_indices() {
+        try_it(&whole[..at]);
+        for put in ["", "\"", "=", "[", "\n", "\r", "-", "é", "\u{0}", "'''"] {
+            try_it(&format!("{}{put}{}", &whole[..at], &whole[at + c.len_utf8()..]));
+        }
+    }
+    assert!(tried > 10_000, "{tried}");
+}
+
 /// The page of documentation names every section and key, with what it may hold, its default and its term.
 #[test]
 fn the_documentation_is_complete() {
