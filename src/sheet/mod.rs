@@ -136,3 +136,6 @@ impl Sheet {
 fn identity(path: &Path) -> PathBuf {
     path.canonicalize().or_else(|_| std::path::absolute(path)).unwrap_or_else(|_| path.to_path_buf())
 }
+
+#[cfg(test)]
+mod tests;

@@ -79,10 +79,10 @@ impl Reader<'_> {
             }
             let Some(index) = self.sections.iter().position(|s| s.name == name.get_ref()) else {
                 let names: Vec<_> = self.sections.iter().map(|s| s.name).chain([CAST]).collect();
-                self.unknown("a sheet", "section", name, &names);
+                self.unknown("a sheet", "section", name, &names, false);
                 continue;
             };
-            self.section(index, value, &mut document.station, &mut given);
+            self.section(index, value, &mut document.station, &mut given, false);
         }
         self.clashes(given);
         document
@@ -114,7 +114,7 @@ impl Reader<'_> {
             } else if let Some(index) =
                 self.sections.iter().position(|s| s.name == word && !DIRECT.contains(&s.name))
             {
-                self.section(index, value, &mut scope, &mut given);
+                self.section(index, value, &mut scope, &mut given, true);
             } else {
                 let names: Vec<_> = std::iter::once(CAST_LOG)
                     .chain(self.sections.iter().flat_map(|s| match DIRECT.contains(&s.name) {
@@ -122,7 +122,7 @@ impl Reader<'_> {
                         false => vec![s.name],
                     }))
                     .collect();
-                self.unknown("[[cast]]", "key", name, &names);
+                self.unknown("[[cast]]", "key", name, &names, true);
             }
         }
         self.clashes(given);
@@ -162,19 +162,20 @@ impl Reader<'_> {
             .find_map(|s| s.key(name).map(|key| (s.name, key)))
     }
 
+    /// A section of the sheet, or of a cast.
     fn section(
         &mut self,
         index: usize,
         value: &Spanned<DeValue<'_>>,
         scope: &mut Scope,
         given: &mut Vec<Given>,
+        of_cast: bool,
     ) {
         let section = self.sections[index].name;
+        let header = header(section, of_cast);
         let DeValue::Table(table) = value.get_ref() else {
-            let problem = format!(
-                "'{section}': expected a section [{section}], found {}",
-                value::words(value.get_ref())
-            );
+            let found = value::words(value.get_ref());
+            let problem = format!("'{section}': expected a section {header}, found {found}");
             let fault = self.fault(value.span(), problem);
             self.push(value.span(), fault);
             return;
@@ -184,7 +185,7 @@ impl Reader<'_> {
                 Some(key) => self.key(section, key, name, value, scope, given),
                 None => {
                     let names: Vec<_> = self.sections[index].keys.iter().map(|key| key.name).collect();
-                    self.unknown(&format!("[{section}]"), "key", name, &names);
+                    self.unknown(&header, "key", name, &names, of_cast);
                 }
             }
         }
@@ -234,15 +235,19 @@ impl Reader<'_> {
         }
     }
 
-    fn unknown(&mut self, table: &str, what: &str, name: &Spanned<impl AsRef<str>>, names: &[&'static str]) {
+    fn unknown(
+        &mut self,
+        table: &str,
+        what: &str,
+        name: &Spanned<impl AsRef<str>>,
+        names: &[&'static str],
+        of_cast: bool,
+    ) {
         let word = name.get_ref().as_ref();
         let elsewhere: Vec<&str> =
             self.sections.iter().filter(|s| s.key(word).is_some()).map(|s| s.name).collect();
         let remedy = match elsewhere[..] {
-            [section] if section != UNCERTAINTY && table.contains("cast") => {
-                format!("it belongs in [cast.{section}]")
-            }
-            [section] if section != UNCERTAINTY => format!("it belongs in [{section}]"),
+            [section] if section != UNCERTAINTY => format!("it belongs in {}", header(section, of_cast)),
             _ => format!("the nearest is '{}'; known are {}", nearest(word, names), names.join(", ")),
         };
         let fault = self.fault(name.span(), format!("{table} has no {what} '{word}'")).remedy(remedy);
@@ -255,5 +260,14 @@ impl Reader<'_> {
 
     fn push(&mut self, at: Range<usize>, fault: Fault) {
         self.faults.push((at.start, fault));
+    }
+}
+
+/// How a section is opened, in the sheet or in a cast.
+fn header(section: &str, of_cast: bool) -> String {
+    match of_cast {
+        true if DIRECT.contains(&section) => format!("[[{CAST}]]"),
+        true => format!("[{CAST}.{section}]"),
+        false => format!("[{section}]"),
     }
 }

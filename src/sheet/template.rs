@@ -1,8 +1,7 @@
 //! A sheet to fill in: every key with its meaning, and what the logs tell already filled in.
 
-use super::keys::{self, Key};
-use crate::cast::AIR_DBAR;
-use crate::cast::{Cast, CastSettings, TareBasis, TareChoice};
+use super::keys::{self, Key, Kind};
+use crate::cast::{AIR_DBAR, Cast, CastSettings, TareChoice};
 use crate::constants::{HPA_PER_DBAR, STANDARD_ATMOSPHERE_DBAR};
 use crate::log::{Log, PressureKind, ReadOptions};
 use crate::settings::STANDARD_AIR_HPA;
@@ -15,7 +14,8 @@ const HEAD: &str = "\
 Cast sheet of seaplumb: what is known of casts besides their logs. Use it with: seaplumb deepest --sheet FILE
 
 Lines that begin with # are passed over. To use a key, take its # away and fill in its value. An option of the call beats the \
-sheet, the sheet beats what the log says. Keys that begin with u_ are standard uncertainties (one standard deviation).";
+sheet, the sheet beats what the log says. Keys that begin with u_ and all of \
+[uncertainty] are standard uncertainties: one standard deviation, 0 or more.";
 
 const CASTS: &str = "\
 One [[cast]] for each log, or for several by a pattern (log = \"casts/*.csv\"; '*' stands for any part of a name, '?' for one \
@@ -92,7 +92,6 @@ fn deck(log: &Log) -> Option<DeckReading> {
             tare: TareChoice::Fixed(0.0),
         };
         let cast = Cast::new(log, &settings).ok()?;
-        debug_assert_eq!(cast.tare.basis, TareBasis::Given);
         let in_air = match kind {
             PressureKind::Absolute => STANDARD_AIR_HPA / HPA_PER_DBAR,
             PressureKind::Sea => STANDARD_AIR_HPA / HPA_PER_DBAR - STANDARD_ATMOSPHERE_DBAR,
@@ -138,8 +137,19 @@ pub fn template(casts: &[CastFacts], reading: &ReadOptions) -> String {
     sheet.0
 }
 
+/// What a key is, what it may hold, what holds without it.
 fn about(key: &Key) -> String {
-    format!("{}: {}. Else: {}. Example: {}", key.meaning, key.expected(), key.otherwise, key.example)
+    let expected = match key.kind {
+        // The head of the sheet says what they all hold.
+        Kind::Uncertainty(term) if key.name == term.key() && term.unit() == "1" => String::new(),
+        Kind::Uncertainty(term) if key.name == term.key() => format!(" in {}", term.unit()),
+        Kind::Uncertainty(_) => String::new(),
+        _ => format!("; {}", key.expected()),
+    };
+    let mut letters = key.meaning.chars();
+    let first = letters.next().map(|c| c.to_uppercase().to_string()).unwrap_or_default();
+    let meaning = first + letters.as_str();
+    format!("{meaning}{expected}. Without it: {}. Example: {}", key.otherwise, key.example)
 }
 
 struct Sheet(String);
