@@ -18,6 +18,8 @@ pub(super) const AIR_SHARE: f64 = 0.1;
 pub(super) const TELLING_SALT: f64 = 5.0;
 /// How far in dbar readings on deck may be from each other where salt tells of air.
 const WANDER_WITH_SALT_DBAR: f64 = 1.0;
+/// How far in dbar the deck may read from the smallest reading where salt tells of air: a zero may drift over a dive.
+const DRIFT_WITH_SALT_DBAR: f64 = 5.0;
 /// The same where pressure alone must tell: an instrument hanging in the sea feels the swell.
 const WANDER_ALONE_DBAR: f64 = 0.15;
 /// How far the deck may read from what air should read, where pressure alone must tell.
@@ -55,21 +57,26 @@ pub(super) fn find(
             }
         }
     };
-    let stretch = |order: &mut dyn Iterator<Item = usize>| -> usize {
-        let order: Vec<usize> = order.collect();
-        let mut first: Vec<f64> =
-            order.iter().map(|&b| blocks.pressure[b]).filter(|p| p.is_finite()).take(5).collect();
+    let stretch = |first_block: usize, order: &mut dyn Iterator<Item = usize>| -> usize {
+        // Blocks without a pressure say nothing.
+        let order: Vec<usize> = order.filter(|&b| blocks.pressure[b].is_finite()).collect();
+        let mut first: Vec<f64> = order.iter().map(|&b| blocks.pressure[b]).take(5).collect();
         let Some(start_dbar) = median(&mut first) else { return 0 };
-        if start_dbar > low + WANDER_WITH_SALT_DBAR {
+        let farthest = if in_water.is_some() { DRIFT_WITH_SALT_DBAR } else { WANDER_WITH_SALT_DBAR };
+        if start_dbar > low + farthest {
             return 0;
         }
         // One odd block (a spike) does not end the time on deck; three in a row do.
-        let air: Vec<bool> =
-            order.iter().map(|&b| blocks.pressure[b].is_nan() || is_air(b, start_dbar)).collect();
-        (0..air.len()).find(|&n| air[n..].iter().take(3).all(|a| !a)).unwrap_or(air.len())
+        let air: Vec<bool> = order.iter().map(|&b| is_air(b, start_dbar)).collect();
+        match (0..air.len()).find(|&n| air[n..].iter().take(3).all(|a| !a)) {
+            Some(0) => 0,
+            // Up to the last block in air, in blocks from this end of the log.
+            Some(n) => order[n - 1].abs_diff(first_block) + 1,
+            None => blocks.len(),
+        }
     };
-    let before = stretch(&mut (0..blocks.len())) * blocks.size;
-    let after = stretch(&mut (0..blocks.len()).rev());
+    let before = stretch(0, &mut (0..blocks.len())) * blocks.size;
+    let after = stretch(blocks.len() - 1, &mut (0..blocks.len()).rev());
     let after = blocks.len().saturating_sub(after) * blocks.size;
     // Blocks settle it to within a block; where salt tells air from water, samples settle the rest.
     let in_air = |i: usize| match (in_water, salt) {

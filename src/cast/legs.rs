@@ -143,7 +143,7 @@ fn arrival(descent: &[(f64, f64, usize)], surface: f64) -> usize {
     let usual = median(&mut speeds).unwrap_or(0.0);
     let ahead = AHEAD_SHARE * (end - surface) / usual;
     let mut next = 0;
-    descent
+    let slow = descent
         .iter()
         .enumerate()
         .position(|(i, &(t, p, _))| {
@@ -154,7 +154,10 @@ fn arrival(descent: &[(f64, f64, usize)], surface: f64) -> usize {
             let (later_t, later_p, _) = descent[next];
             end - p <= AT_DEEPEST_DBAR || (p >= deep && (later_p - p) / (later_t - t) < SLOW_SHARE * usual)
         })
-        .unwrap_or(last)
+        .unwrap_or(last);
+    // Slow over the time ahead, most of it at rest: the descent goes on to where it comes to rest.
+    let rest = descent[next.max(slow)].1 - AT_DEEPEST_DBAR;
+    (slow..=last).find(|&i| descent[i].1 >= rest).unwrap_or(slow)
 }
 
 #[cfg(test)]
@@ -173,9 +176,8 @@ mod tests {
             .chain((0..1000).rev().map(f64::from))
             .collect();
         let legs = legs(&p);
-        // Slow over the next 2 % of the cast: the last fifth of that may still be descent.
-        assert!((996..=1000).contains(&legs.range(Leg::Bottom).start), "{legs:?}");
-        assert!((1600..=1604).contains(&legs.range(Leg::Up).start), "{legs:?}");
+        assert!((999..=1000).contains(&legs.range(Leg::Bottom).start), "{legs:?}");
+        assert!((1600..=1601).contains(&legs.range(Leg::Up).start), "{legs:?}");
     }
 
     #[test]

@@ -28,7 +28,8 @@ pub(super) fn of_pressure(pressure: &[f64], legs: &Legs) -> Noise {
     let range = if bottom.len() >= FEWEST { bottom } else { legs.water() };
     let deviation_dbar = (range.len() >= FEWEST)
         .then(|| {
-            let third = pressure[range].windows(4).map(|w| w[3] - 3.0 * w[2] + 3.0 * w[1] - w[0]).collect();
+            let present: Vec<f64> = pressure[range].iter().copied().filter(|p| p.is_finite()).collect();
+            let third = present.windows(4).map(|w| w[3] - 3.0 * w[2] + 3.0 * w[1] - w[0]).collect();
             robust_deviation(third).map(|d| d / 20f64.sqrt())
         })
         .flatten()

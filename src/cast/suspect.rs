@@ -226,7 +226,11 @@ impl<'a> Judge<'a> {
         }
     }
 
+    /// A log in equal steps of pressure has been averaged, and whoever did that took the spikes out.
     fn spikes(&mut self) {
+        if self.noise.averaged_step_dbar.is_some() {
+            return;
+        }
         let temperature = self.log.temperature.as_ref().map(|t| t.values.as_slice());
         let salt = self.salt().map(|c| c.values.as_slice());
         let searches = [

@@ -49,6 +49,8 @@ impl Failure {
 /// # Errors
 /// [`Failure`] when the call makes no sense or the results cannot be written.
 pub fn run(cli: &Cli, out: &mut dyn Write, notes: &mut dyn Write) -> Result<ExitCode, Failure> {
+    // Results do not end with the notes: whoever closed standard error still gets them.
+    let notes: &mut dyn Write = &mut Notes(notes);
     match &cli.command {
         Command::Reduce(args) => {
             let mut report: Box<dyn Report> = match args.format {
@@ -81,5 +83,20 @@ pub fn run(cli: &Cli, out: &mut dyn Write, notes: &mut dyn Write) -> Result<Exit
         }
         Command::Sheet(args) => sheet::print(args, out, notes),
         Command::Inspect(args) => super::inspect::inspect(args, out, notes),
+    }
+}
+
+/// Notes that may get lost.
+struct Notes<'a>(&'a mut dyn Write);
+
+impl Write for Notes<'_> {
+    fn write(&mut self, text: &[u8]) -> io::Result<usize> {
+        let _ = self.0.write_all(text);
+        Ok(text.len())
+    }
+
+    fn flush(&mut self) -> io::Result<()> {
+        let _ = self.0.flush();
+        Ok(())
     }
 }

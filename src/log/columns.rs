@@ -204,7 +204,12 @@ fn no_pressure(file: &str, noun: &str, fields: &[Field]) -> LogError {
     let labels = list(fields.iter().map(|f| f.label.as_str()));
     let example = if fields.is_empty() { "pressure=NAME:dbar".to_string() } else { String::new() };
     let remedy = if example.is_empty() {
-        let index = fields.iter().position(|f| unit_is(f, Role::Pressure)).unwrap_or(0);
+        // Never a column that is known to be something else.
+        let index = fields
+            .iter()
+            .position(|f| unit_is(f, Role::Pressure))
+            .or_else(|| fields.iter().position(|f| f.recognised.is_none()))
+            .unwrap_or(0);
         format!(
             "if one of them is pressure, say so, for example {}",
             option(fields, Role::Pressure, index, Some("dbar"))

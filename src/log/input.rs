@@ -40,6 +40,14 @@ impl Input {
                 LogError::new(source, "this is a folder, not a log").remedy("name the files inside it")
             );
         }
+        #[cfg(unix)]
+        if std::fs::metadata(source)
+            .is_ok_and(|m| std::os::unix::fs::FileTypeExt::is_char_device(&m.file_type()))
+        {
+            return Err(
+                LogError::new(source, "this is a device without end, not a log").remedy("name a file")
+            );
+        }
         let bytes = std::fs::read(source).map_err(|e| unreadable(source, &e))?;
         Self::from_bytes(source, bytes)
     }

@@ -61,7 +61,7 @@ fn of_term(term: Term) -> Key {
         Term::AirPressure => ("1 when the air pressure is given, else 10", "0.5"),
         Term::TemperatureCalibration => ("0.002", "0.001"),
         Term::ConductivityCalibration | Term::SalinityCalibration => ("0.003", "0.002"),
-        Term::SalinityComposition => ("0.005", "0.002"),
+        Term::SalinityComposition => ("0.005 by the atlas, else 0.015", "0.002"),
         Term::EquationOfState => ("10 to 100 MPa, 20 beyond", "5.0"),
         Term::ProfileRepresentativeness => {
             ("from down leg against up leg, else a share of what density in situ does to depth", "0.1")
