@@ -1,21 +1,17 @@
 //! The whole way of one log: cast, water column, depth, uncertainty.
 
-use crate::cast::{Cast, Leg, Quantity, Reason, TareBasis, median};
-use crate::column::{Column, ProfileError, Salt, Water, WaterNode, bin_means, mean_of_legs};
+mod remarks;
+mod water;
+
+use crate::cast::{Cast, Leg, Quantity, Reason};
+use crate::column::{Column, ProfileError};
 use crate::depth::{Deepest, Model, Place, Rung, ladder};
 use crate::gravity::SurfaceGravity;
 use crate::log::{Flag, Log, LogError, PressureKind};
-use crate::seawater::{Composition, VALID_TO_DBAR};
-use crate::settings::{LegChoice, Settings};
+use crate::seawater::Composition;
+use crate::settings::Settings;
 use crate::uncertainty::{Budget, DepthUncertainty, Evidence, SurveyOrder, WaterOrigin, survey_orders};
 use crate::warning::Warning;
-
-/// Water with less salt than this in g/kg is fresh.
-const FRESH_G_KG: f64 = 0.5;
-/// A leg must span this share of the cast to speak for its water.
-const SPAN_SHARE: f64 = 0.5;
-/// The other leg must span this share to be held against the chosen one.
-const COMPARE_SHARE: f64 = 0.9;
 
 /// A log, reduced to depths.
 pub struct Reduction {
@@ -86,6 +82,7 @@ impl Reduction {
         let composition = composition(settings, latitude_deg, longitude_deg);
         let cast_settings = settings.cast();
         let cast = Cast::new(&log, &cast_settings)?;
+        believable(&log, &cast)?;
         let elapsed_s = log.time.as_ref().map(|t| t.elapsed_s.as_slice());
         let deepest = Deepest::find(&cast, elapsed_s).ok_or_else(|| {
             LogError::new(&log.source, "no sample in the water has a pressure that can be used")
@@ -105,7 +102,7 @@ impl Reduction {
             };
             LogError::new(&log.source, why).remedy("give the water of a nearby cast: --profile FILE")
         };
-        let chosen = choose_water(&log, &cast, settings, &composition, deepest_dbar, &mut warnings)
+        let chosen = water::choose_water(&log, &cast, settings, &composition, deepest_dbar, &mut warnings)
             .map_err(not_water)?;
 
         let place = Place {
@@ -118,7 +115,8 @@ impl Reduction {
             reference_below_sensor_m: settings.reference_below_sensor_m.unwrap_or(0.0),
         };
         let eos = settings.equation_of_state();
-        let model = Model { water: chosen.water.with_equation_of_state(eos), place };
+        let same_sensor = chosen.origin == WaterOrigin::Log;
+        let model = Model { water: chosen.water.with_equation_of_state(eos), place, same_sensor };
         let other_leg = chosen.other_leg.map(|water| water.with_equation_of_state(eos));
         let column = model.column().map_err(not_water)?;
         let evidence = Evidence {
@@ -139,7 +137,7 @@ impl Reduction {
         let ladder = ladder(&model, deepest.pressure_dbar).map_err(not_water)?;
         let survey_orders = survey_orders(deepest_m, budget.expanded_for_m(0.95));
 
-        warnings.extend(noticed(&cast, &model, &deepest));
+        warnings.extend(remarks::noticed(&log, &cast, &model, &deepest, settings));
         let of_water = model.water.composition();
         let known = chosen.origin == WaterOrigin::StandardOcean || *of_water != Composition::Reference;
         if !known && settings.composition.is_none() && longitude_deg.is_some() {
@@ -149,7 +147,7 @@ impl Reduction {
                 "check the position",
             ));
         }
-        let mut assumptions = assumed(&cast, settings);
+        let mut assumptions = remarks::assumed(&cast, settings);
         if !known {
             let why = if longitude_deg.is_none() { ": --lon DEGREES, for that of the place" } else { "" };
             assumptions.push(format!("salt of the reference composition{why}"));
@@ -247,14 +245,43 @@ impl Reduction {
 fn position(log: &Log, settings: &Settings) -> Result<(f64, Option<f64>), LogError> {
     let of_log = log.position;
     let latitude = settings.latitude_deg.or(of_log.map(|p| p.latitude_deg)).ok_or_else(|| {
-        LogError::new(&log.source, "the latitude is not known, and depth depends on it by up to 0.5 %")
-            .remedy("give it: --lat DEGREES (north positive), and --lon DEGREES")
+        let nowhere = log.warnings.iter().find(|w| w.key == "position_out_of_range");
+        let why = nowhere.map_or(String::new(), |w| format!(": {}", w.cause));
+        LogError::new(
+            &log.source,
+            format!("the latitude is not known, and depth depends on it by up to 0.5 %{why}"),
+        )
+        .remedy("give it: --lat DEGREES (north positive), and --lon DEGREES")
     })?;
     if !(-90.0..=90.0).contains(&latitude) {
         return Err(LogError::new(&log.source, format!("a latitude of {latitude} degrees is none"))
             .remedy("give one from -90 to 90: --lat DEGREES"));
     }
-    Ok((latitude, settings.longitude_deg.or(of_log.and_then(|p| p.longitude_deg))))
+    // Positions of single precision carry digits that mean nothing: a millionth of a degree is 0.1 m.
+    let rounded = |degrees: f64| (degrees * 1e6).round() / 1e6;
+    let longitude = settings.longitude_deg.or(of_log.and_then(|p| p.longitude_deg));
+    Ok((rounded(latitude), longitude.map(rounded)))
+}
+
+/// A log whose pressures mostly lie where no sea is has the wrong sign, unit or kind.
+fn believable(log: &Log, cast: &Cast) -> Result<(), LogError> {
+    let out = cast
+        .suspects
+        .iter()
+        .filter(|s| (s.quantity, s.reason) == (Quantity::Pressure, Reason::Range))
+        .count();
+    let present = cast.pressure_dbar.iter().filter(|p| p.is_finite()).count();
+    if out * 2 <= present {
+        return Ok(());
+    }
+    let problem = format!(
+        "{out} of {present} pressures lie outside -3 to 11 600 dbar (column '{}', read as {})",
+        log.pressure.name, log.pressure.unit
+    );
+    Err(LogError::new(&log.source, problem).remedy(format!(
+        "check its sign, its unit (--column pressure={}:UNIT) and its kind (--pressure absolute, sea or gauge)",
+        log.pressure.name
+    )))
 }
 
 /// The salt by the user's word, else by the atlas at the position, else of the reference composition.
@@ -264,216 +291,8 @@ fn composition(settings: &Settings, latitude_deg: f64, longitude_deg: Option<f64
     })
 }
 
-struct ChosenWater {
-    water: Water,
-    other_leg: Option<Water>,
-    origin: WaterOrigin,
-    words: String,
-}
-
-/// The water by the user's word: another cast's profile, else the chosen leg, else the standard ocean.
-fn choose_water(
-    log: &Log,
-    cast: &Cast,
-    settings: &Settings,
-    composition: &Composition,
-    deepest_dbar: f64,
-    warnings: &mut Vec<Warning>,
-) -> Result<ChosenWater, ProfileError> {
-    if let Some(other) = &settings.profile {
-        let reach = other.water.nodes()[other.water.nodes().len() - 1].pressure_dbar;
-        if reach < deepest_dbar - 1.0 {
-            warnings.push(continued(&format!("the profile of {}", other.source), reach, deepest_dbar));
-        }
-        return Ok(ChosenWater {
-            water: other.water.with_composition(composition.clone()).continued_to(deepest_dbar),
-            other_leg: None,
-            origin: WaterOrigin::OtherCast,
-            words: format!("profile of {}", other.source),
-        });
-    }
-    let levels = |leg| leg_levels(log, cast, leg);
-    let (down, up) = (levels(Leg::Down), levels(Leg::Up));
-    let spans = |nodes: &[WaterNode], share: f64| {
-        nodes.len() > 1
-            && nodes[nodes.len() - 1].pressure_dbar - nodes[0].pressure_dbar > share * deepest_dbar
-    };
-    let (down_speaks, up_speaks) = (spans(&down, SPAN_SHARE), spans(&up, SPAN_SHARE));
-    let leg = match settings.leg() {
-        LegChoice::Both if down_speaks && up_speaks => LegChoice::Both,
-        LegChoice::Up if up_speaks => LegChoice::Up,
-        _ if down_speaks => LegChoice::Down,
-        _ if up_speaks => LegChoice::Up,
-        _ if down.len() + up.len() > 1 => LegChoice::Both,
-        _ => {
-            warnings.push(Warning::new(
-                "standard_ocean",
-                "no water of this cast is known: the standard ocean (35.165 04 g/kg, 0 degC) stands in for it, which may put the depth wrong by metres",
-                "give the water of a nearby cast: --profile FILE",
-            ));
-            return Ok(ChosenWater {
-                water: Water::standard_ocean(deepest_dbar),
-                other_leg: None,
-                origin: WaterOrigin::StandardOcean,
-                words: "standard ocean (the log has no temperature with conductivity or salinity that can be used)".to_string(),
-            });
-        }
-    };
-    if leg != settings.leg() {
-        let name = |leg| match leg {
-            LegChoice::Down => "the down leg",
-            LegChoice::Up => "the up leg",
-            LegChoice::Both => "both legs",
-        };
-        warnings.push(Warning::new(
-            "other_leg_used",
-            format!(
-                "{} spans too little of the cast; the water is that of {}",
-                name(settings.leg()),
-                name(leg)
-            ),
-            "",
-        ));
-    }
-    let salt = if log.conductivity.is_some() { Salt::Conductivity } else { Salt::Practical };
-    let water = |nodes: Vec<WaterNode>| Water::new(nodes, salt, composition.clone(), deepest_dbar);
-    let other_leg = match leg {
-        LegChoice::Down if spans(&up, COMPARE_SHARE) => Some(water(up.clone())?),
-        LegChoice::Up if spans(&down, COMPARE_SHARE) => Some(water(down.clone())?),
-        LegChoice::Both if spans(&up, COMPARE_SHARE) => Some(water(up.clone())?),
-        _ => None,
-    };
-    let (nodes, words) = match leg {
-        LegChoice::Down => (down, "down leg"),
-        LegChoice::Up => (up, "up leg"),
-        LegChoice::Both => (mean_of_legs(&down, &up), "mean of down and up leg"),
-    };
-    let reach = nodes.last().map_or(0.0, |n| n.pressure_dbar);
-    if reach < deepest_dbar - 2.0 {
-        warnings.push(continued("the water of this cast", reach, deepest_dbar));
-    }
-    Ok(ChosenWater {
-        water: water(nodes)?,
-        other_leg,
-        origin: WaterOrigin::Log,
-        words: format!("{words}, averaged by 1 dbar"),
-    })
-}
-
-fn continued(what: &str, reach_dbar: f64, deepest_dbar: f64) -> Warning {
-    Warning::new(
-        "water_continued",
-        format!(
-            "{what} ends at {reach_dbar:.0} dbar; below, down to {deepest_dbar:.0} dbar, its last salinity and potential temperature are kept"
-        ),
-        "",
-    )
-}
-
 /// From the smallest to the largest pressure in the water, in dbar.
 fn span(cast: &Cast) -> f64 {
     let pressures = || cast.legs.water().map(|i| cast.pressure_dbar[i]).filter(|p| p.is_finite());
     pressures().fold(f64::NEG_INFINITY, f64::max) - pressures().fold(f64::INFINITY, f64::min)
-}
-
-/// Levels of one leg; the bottom belongs to either.
-fn leg_levels(log: &Log, cast: &Cast, leg: Leg) -> Vec<WaterNode> {
-    let (Some(t), Some(salt)) = (&log.temperature, log.conductivity.as_ref().or(log.salinity.as_ref()))
-    else {
-        return Vec::new();
-    };
-    let samples = cast.legs.range(leg).chain(cast.legs.range(Leg::Bottom));
-    bin_means(samples.filter(|&i| cast.water_usable(i)).map(|i| WaterNode {
-        pressure_dbar: cast.pressure_dbar[i],
-        temperature_degc: t.values[i],
-        salt: salt.values[i],
-    }))
-}
-
-/// What the result shows that the user should know.
-fn noticed(cast: &Cast, model: &Model, deepest: &Deepest) -> Vec<Warning> {
-    let mut warnings = Vec::new();
-    if deepest.pressure_dbar > VALID_TO_DBAR {
-        warnings.push(Warning::new(
-            "equation_of_state_extrapolated",
-            format!(
-                "beyond {VALID_TO_DBAR:.0} dbar (100 MPa) the equation of state is extrapolated; its term is widened"
-            ),
-            "",
-        ));
-    }
-    if let Some(step) = cast.noise.averaged_step_dbar {
-        warnings.push(Warning::new(
-            "averaged_log",
-            format!("the log is averaged in steps of {step:.4} dbar: the deepest depth is that of its deepest step"),
-            "",
-        ));
-    }
-    let deeper = cast
-        .suspects
-        .iter()
-        .filter(|s| (s.quantity, s.reason) == (Quantity::Pressure, Reason::Logged))
-        .filter(|s| cast.pressure_dbar[s.sample] > deepest.raw_pressure_dbar)
-        .count();
-    if deeper > 0 {
-        warnings.push(Warning::new(
-            "flagged_deeper",
-            format!("{deeper} samples that the log flags as not good are deeper than the deepest depth; they are left out of it"),
-            "see the flags of the log",
-        ));
-    }
-    let water = model.water.nodes();
-    let mut salts: Vec<f64> = water.iter().map(|n| model.water.salinity_of_level_g_kg(n)).collect();
-    if let Some(usual) = median(&mut salts).filter(|s| *s < FRESH_G_KG) {
-        warnings.push(Warning::new(
-            "fresh_water",
-            format!("the water is fresh ({usual:.2} g/kg): right in a lake; in the sea the conductivity was not measured"),
-            "give the water of a nearby cast: --profile FILE",
-        ));
-    }
-    let salinities: Vec<f64> = water.iter().map(|n| model.water.salinity_of_level_g_kg(n)).collect();
-    let outside = water
-        .iter()
-        .zip(&salinities)
-        .filter(|(n, s)| !(0.0..=42.0).contains(*s) || !(-6.0..=40.0).contains(&n.temperature_degc))
-        .count();
-    if outside > 0 {
-        warnings.push(Warning::new(
-            "outside_validity",
-            format!("{outside} levels of the water lie outside what the equation of state is stated for (0 to 42 g/kg, -6 to 40 degC)"),
-            "check units and columns",
-        ));
-    }
-    warnings
-}
-
-/// What was assumed about how the log is to be read (the budget tells what was assumed of its terms).
-fn assumed(cast: &Cast, settings: &Settings) -> Vec<String> {
-    let mut sentences = Vec::new();
-    if !cast.pressure_kind_known {
-        sentences.push("pressure counts as sea pressure (absolute less 101 325 Pa): --pressure".to_string());
-    }
-    if settings.air_pressure_hpa.is_none() {
-        sentences.push("air pressure 1013.25 hPa: --air-pressure HPA".to_string());
-    }
-    if cast.tare.basis == TareBasis::Assumed {
-        let why = if cast.deck.is_some() { "as asked" } else { "no samples on deck" };
-        sentences.push(format!("zero offset of the pressure sensor 0 dbar ({why}): --tare DBAR"));
-    }
-    if settings.surface_gravity.is_none() {
-        sentences.push("gravity disturbance 0 mGal: --gravity-anomaly MGAL".to_string());
-    }
-    if settings.gradient_eotvos.is_none() {
-        sentences.push("gravity gradient anomaly 0 E: --gravity-gradient EOTVOS".to_string());
-    }
-    if settings.geoid_height_m.is_none() {
-        sentences.push("geoid height 0 m: --geoid-height M".to_string());
-    }
-    if settings.water_level_m.is_none() {
-        sentences.push("water level 0 m above the datum: --water-level M".to_string());
-    }
-    if settings.reference_below_sensor_m.is_none() {
-        sentences.push("the reference point is the pressure sensor: --reference-below M".to_string());
-    }
-    sentences
 }

@@ -129,8 +129,8 @@ fn lander_dive_legs() {
     assert_eq!(found.end as u64 - 1, water[1].as_u64().expect("last"));
     let bottom = r.cast.legs.range(Leg::Bottom);
     let phase = |name: &str| truth["phases_first_sample"][name].as_u64().expect("a sample") as f64;
-    // Slow over the next 2 % of the cast tells the end of the descent: within that of the truth.
-    let slack = 0.02 * 0.2 * 11_200.0 + 7.0;
+    // Legs are told by blocks of seven samples.
+    let slack = 14.0;
     assert!((bottom.start as f64 - phase("bottom")).abs() < slack, "{bottom:?}");
     assert!((bottom.end as f64 - phase("ascent")).abs() < slack, "{bottom:?}");
 }
@@ -147,7 +147,6 @@ fn series(file: &str, settings: &Settings, noise_m: f64) {
         compared += 1;
         // Five deviations of noise, and a centimetre for tare and water.
         assert!(residual.abs() < 5.0 * noise_m + 0.012, "sample {}: {residual} m", sample[i]);
-        assert!(residual.abs() < 3.0 * ours.u_depth_m);
     }
     assert!(compared >= 4, "{file}: only {compared} samples compared");
 }

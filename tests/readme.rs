@@ -28,7 +28,8 @@ fn blocks() -> Vec<Block> {
                 "--air-pressure",
                 "1009.3",
             ],
-            keep: |out| out.to_string(),
+            // The caution stands at the top of the page.
+            keep: |out| out[..out.find("\nNot for navigation").expect("the caution")].to_string(),
         },
         Block {
             name: "reduce",

@@ -65,7 +65,9 @@ pub(super) fn robust_deviation(mut distances: Vec<f64>) -> Option<f64> {
 /// The decimal place to which values were rounded, as a step in their unit; 0 when none of the first eight fits them all
 /// (converted units, full precision).
 pub(super) fn resolution(values: &[f64]) -> f64 {
-    let sample: Vec<f64> = values.iter().copied().filter(|v| v.is_finite()).take(2_000).collect();
+    // From the whole log: at rest, or on deck, a reading may be round for long.
+    let stride = (values.len() / 4_001).max(1);
+    let sample: Vec<f64> = values.iter().step_by(stride).copied().filter(|v| v.is_finite()).collect();
     (0..8)
         .map(|places| 10f64.powi(places))
         .find(|scale| sample.iter().all(|v| (v * scale - (v * scale).round()).abs() < 1e-3))

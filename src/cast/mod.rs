@@ -89,7 +89,8 @@ impl Cast {
         let blocks = blocks::Blocks::new(&log.pressure.values, salt);
         let expected_dbar = tare::expected_on_deck_dbar(kind, settings.air_pressure_hpa);
         let deck = deck::find(&blocks, &log.pressure.values, salt, expected_dbar);
-        let tare = tare::settle(log, settings, kind, known.is_some(), deck.as_ref())?;
+        let resolution_dbar = blocks::resolution(&log.pressure.values);
+        let tare = tare::settle(log, settings, kind, known.is_some(), deck.as_ref(), resolution_dbar)?;
 
         let to_sea_dbar = match kind {
             PressureKind::Absolute => -STANDARD_ATMOSPHERE_DBAR,
@@ -103,10 +104,17 @@ impl Cast {
             LogError::new(&log.source, "the log never leaves the deck: no sample is in the water")
                 .remedy("if it does, say where its pressure counts from: --pressure absolute, sea or gauge")
         })?;
-        let noise = noise::of_pressure(&pressure_dbar, &legs);
+        let noise = noise::of_pressure(&pressure_dbar, &legs, resolution_dbar);
         let practical_salinity = salinity_of(log, &pressure_dbar);
 
-        let mut judge = suspect::Judge::new(log, &pressure_dbar, &practical_salinity, &legs, &noise);
+        let mut judge = suspect::Judge::new(
+            log,
+            &pressure_dbar,
+            &practical_salinity,
+            &legs,
+            &noise,
+            settings.surface_dbar(),
+        );
         judge.run();
         let (pressure_flag, water_flag, suspects) = judge.verdict();
         warnings.extend(time_warning(log));

@@ -1,6 +1,6 @@
 //! Noise of the pressure, from the pressure itself.
 
-use super::blocks::{median, resolution, robust_deviation};
+use super::blocks::{median, robust_deviation};
 use super::legs::{Leg, Legs};
 
 /// What the log tells of the noise of its pressure.
@@ -8,6 +8,8 @@ use super::legs::{Leg, Legs};
 pub struct Noise {
     /// Standard deviation of one reading in dbar; `None` when the log cannot tell (averaged or too short).
     pub deviation_dbar: Option<f64>,
+    /// The last decimal of the readings, in dbar; 0 when it cannot be told.
+    pub resolution_dbar: f64,
     /// Step in dbar of a log that was averaged in equal steps of pressure.
     pub averaged_step_dbar: Option<f64>,
 }
@@ -19,10 +21,10 @@ const FEWEST: usize = 30;
 ///
 /// Third differences take out everything up to a parabola in time; of independent noise of variance `s2` they leave `20
 /// s2` (sum of the squared binomial coefficients 1, 3, 3, 1). Their median size gives `s` whatever a few spikes do.
-pub(super) fn of_pressure(pressure: &[f64], legs: &Legs) -> Noise {
+pub(super) fn of_pressure(pressure: &[f64], legs: &Legs, resolution_dbar: f64) -> Noise {
     let averaged_step_dbar = equal_step(&pressure[legs.water()]);
     if averaged_step_dbar.is_some() {
-        return Noise { deviation_dbar: None, averaged_step_dbar };
+        return Noise { deviation_dbar: None, resolution_dbar, averaged_step_dbar };
     }
     let bottom = legs.range(Leg::Bottom);
     let range = if bottom.len() >= FEWEST { bottom } else { legs.water() };
@@ -34,14 +36,15 @@ pub(super) fn of_pressure(pressure: &[f64], legs: &Legs) -> Noise {
         })
         .flatten()
         // Readings rounded more coarsely than their noise: the rounding is all there is to see.
-        .map(|d| d.max(resolution(&pressure[legs.water()]) / 12f64.sqrt()));
-    Noise { deviation_dbar, averaged_step_dbar }
+        .map(|d| d.max(resolution_dbar / 12f64.sqrt()));
+    Noise { deviation_dbar, resolution_dbar, averaged_step_dbar }
 }
 
 /// The step of a log whose pressures rise or fall by one and the same amount.
 fn equal_step(pressure: &[f64]) -> Option<f64> {
+    // A log at rest whose readings flicker by their last decimal has steps of zero between.
     let steps: Vec<f64> =
-        pressure.windows(2).map(|w| (w[1] - w[0]).abs()).filter(|d| d.is_finite() && *d > 0.0).collect();
+        pressure.windows(2).map(|w| (w[1] - w[0]).abs()).filter(|d| d.is_finite()).collect();
     if steps.len() < 3 {
         return None;
     }
@@ -60,6 +63,7 @@ mod tests {
         of_pressure(
             pressure,
             &super::super::legs::find(&Blocks::new(pressure, None), None, pressure.len(), None).unwrap(),
+            crate::cast::blocks::resolution(pressure),
         )
     }
 
@@ -83,8 +87,16 @@ mod tests {
     }
 
     #[test]
+    fn a_coarse_log_at_rest_is_not_averaged() {
+        let p: Vec<f64> =
+            (0..500).chain(std::iter::repeat_n(500, 900)).chain((0..500).rev()).map(f64::from).collect();
+        let found = noise(&p);
+        assert_eq!((found.averaged_step_dbar, found.resolution_dbar), (None, 1.0));
+    }
+
+    #[test]
     fn a_log_in_equal_steps_is_averaged() {
         let p: Vec<f64> = (0..300).map(|i| 4.0 + 2.0 * f64::from(i)).collect();
-        assert_eq!(noise(&p), Noise { deviation_dbar: None, averaged_step_dbar: Some(2.0) });
+        assert_eq!(noise(&p).averaged_step_dbar, Some(2.0));
     }
 }

@@ -75,7 +75,7 @@ pub struct Suspect {
     pub reason: Reason,
 }
 
-/// Sea pressures in dbar that occur: deck noise to below the deepest trench.
+/// Pressures in dbar above that of the air that occur: deck noise to below the deepest trench.
 const PRESSURE_DBAR: (f64, f64) = (-3.0, 11_600.0);
 /// Temperatures in degC that seawater has (hot vents apart, where no profile should come from).
 const TEMPERATURE_DEGC: (f64, f64) = (-4.0, 42.0);
@@ -92,6 +92,7 @@ pub(super) struct Judge<'a> {
     salinity: &'a [f64],
     legs: &'a Legs,
     noise: &'a Noise,
+    surface_dbar: f64,
     pressure_flag: Vec<Flag>,
     water_flag: Vec<Flag>,
     suspects: Vec<Suspect>,
@@ -104,6 +105,7 @@ impl<'a> Judge<'a> {
         salinity: &'a [f64],
         legs: &'a Legs,
         noise: &'a Noise,
+        surface_dbar: f64,
     ) -> Self {
         let n = pressure.len();
         Self {
@@ -112,6 +114,7 @@ impl<'a> Judge<'a> {
             salinity,
             legs,
             noise,
+            surface_dbar,
             pressure_flag: vec![Flag::Good; n],
             water_flag: vec![Flag::Good; n],
             suspects: Vec::new(),
@@ -192,7 +195,7 @@ impl<'a> Judge<'a> {
     fn ranges(&mut self) {
         let outside = |v: f64, (low, high): (f64, f64)| v < low || v > high;
         for i in 0..self.pressure.len() {
-            if outside(self.pressure[i], PRESSURE_DBAR) {
+            if outside(self.pressure[i] - self.surface_dbar, PRESSURE_DBAR) {
                 self.accuse(i, Quantity::Pressure, Reason::Range, Reason::Range.flag());
             }
         }
@@ -215,12 +218,12 @@ impl<'a> Judge<'a> {
         let mut deeper: Vec<f64> = self
             .legs
             .water()
-            .filter(|&i| self.pressure[i] > AT_SURFACE_DBAR && salt.values[i].is_finite())
+            .filter(|&i| self.pressure[i] - self.surface_dbar > AT_SURFACE_DBAR && salt.values[i].is_finite())
             .map(|i| salt.values[i])
             .collect();
         let Some(usual) = median(&mut deeper).filter(|&s| s > TELLING_SALT) else { return };
         for i in self.legs.water() {
-            if self.pressure[i] < AT_SURFACE_DBAR && salt.values[i] < AIR_SHARE * usual {
+            if self.pressure[i] - self.surface_dbar < AT_SURFACE_DBAR && salt.values[i] < AIR_SHARE * usual {
                 self.accuse(i, Quantity::Salt, Reason::InAir, Reason::InAir.flag());
             }
         }

@@ -31,7 +31,9 @@ Examples:
   seaplumb reduce dive.csv --lat -31.52 --lon -176.18 > depth.csv
   seaplumb reduce dive.csv.gz --lat -31.52 --pressure absolute --air-pressure 1009.3 --format json
   seaplumb reduce dive.csv --lat -31.52 --lon -176.18 --format netcdf > depth.nc
-  seaplumb reduce cruise/*.nc --into depths";
+  seaplumb reduce cruise/*.nc --into depths
+
+Not for navigation, not for life support, not for deciding how deep a hull may go (see seaplumb --help).";
 
 const DEEPEST_EXAMPLES: &str = "\
 Examples:
@@ -39,7 +41,9 @@ Examples:
   seaplumb deepest dive.csv --lat -31.52 --gravity-anomaly -182 --uncertainty surface_gravity=8
   seaplumb deepest pressure-only.csv --lat -31.52 --profile nearby.csv --format json
   seaplumb deepest cruise/*.nc --format csv > cruise.csv
-  seaplumb deepest --sheet cruise.toml --format json";
+  seaplumb deepest --sheet cruise.toml --format json
+
+Not for navigation, not for life support, not for deciding how deep a hull may go (see seaplumb --help).";
 
 const SHEET_EXAMPLES: &str = "\
 Examples:
@@ -50,7 +54,14 @@ const INSPECT_EXAMPLES: &str = "\
 Examples:
   seaplumb inspect dive.csv
   seaplumb inspect casts.zip --format json
-  seaplumb inspect dive.csv --pressure absolute --air-pressure 1009.3 --samples";
+  seaplumb inspect dive.csv --pressure absolute --air-pressure 1009.3 --samples
+
+Not for navigation, not for life support, not for deciding how deep a hull may go (see seaplumb --help).";
+
+fn degrees(text: &str) -> Result<f64, String> {
+    let number = text.parse().ok().filter(|degrees: &f64| degrees.is_finite());
+    number.ok_or_else(|| "expected degrees with a decimal point, south and west negative: -19.4".to_string())
+}
 
 /// The commands.
 #[derive(Debug, Subcommand)]
@@ -266,10 +277,10 @@ pub struct SharedArgs {
     pub sensor: SensorArgs,
 
     /// Latitude of the cast, north positive; else the log's
-    #[arg(long, value_name = "DEGREES", allow_negative_numbers = true, help_heading = "Place")]
+    #[arg(long, value_name = "DEGREES", value_parser = degrees, allow_negative_numbers = true, help_heading = "Place")]
     pub lat: Option<f64>,
     /// Longitude of the cast, east positive; else the log's
-    #[arg(long, value_name = "DEGREES", allow_negative_numbers = true, help_heading = "Place")]
+    #[arg(long, value_name = "DEGREES", value_parser = degrees, allow_negative_numbers = true, help_heading = "Place")]
     pub lon: Option<f64>,
 
     /// Leg that the water column is taken from [default: down]

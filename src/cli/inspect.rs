@@ -19,14 +19,15 @@ pub(super) fn inspect(
 ) -> Result<ExitCode, Failure> {
     let options = request::read_options(&args.reading)?;
     let settings = request::sensor_settings(&args.sensor)?;
-    request::standard_input_once(&args.logs)?;
+    let sources = super::sources::expand(&args.logs)?;
+    request::standard_input_once(&sources)?;
     let mut report: Box<dyn InspectReport> = match args.format {
         InspectFormat::Text => Box::new(InspectText::new(args.samples)),
         InspectFormat::Json => Box::new(InspectJson::new(args.samples)),
     };
     let mut out = BufWriter::with_capacity(1 << 16, out);
     let (mut begun, mut failed) = (false, 0);
-    for source in &args.logs {
+    for source in &sources {
         let logs = match log::read_each(source, &options) {
             Ok(logs) => logs,
             Err(error) => vec![Err(error)],

@@ -25,7 +25,12 @@ pub(super) struct Folder {
 impl Folder {
     /// Makes the folder where it is not there, and refuses one whose table would be overwritten.
     pub fn open(dir: &Path, replace: bool, logs: &[String]) -> io::Result<Self> {
-        fs::create_dir_all(dir)?;
+        let named = |e: io::Error| io::Error::new(e.kind(), format!("{}: {e}", dir.display()));
+        if dir.exists() && !dir.is_dir() {
+            let text = format!("{} is a file; --into takes a folder", dir.display());
+            return Err(io::Error::new(io::ErrorKind::AlreadyExists, text));
+        }
+        fs::create_dir_all(dir).map_err(named)?;
         let mut folder = Self {
             dir: dir.to_path_buf(),
             replace,
@@ -36,7 +41,9 @@ impl Folder {
         folder.refuse_existing(CRUISE)?;
         DeepestCsv.begin(&mut folder.cruise)?;
         // A folder that cannot be written to is better known before the work.
-        drop(NamedTempFile::new_in(dir)?);
+        drop(NamedTempFile::new_in(dir).map_err(|e| {
+            io::Error::new(e.kind(), format!("{} cannot be written to ({})", dir.display(), e.kind()))
+        })?);
         Ok(folder)
     }
 

@@ -4,8 +4,11 @@ use super::request::CallError;
 use crate::sheet::pattern;
 use std::path::Path;
 
-/// The logs that the arguments of a call name, in their order: a folder stands for the files in it, sorted by name, without
-/// hidden ones and tables that an earlier call wrote (`cruise.csv`); a pattern (`*`, `?`) that the shell has left alone for the files that
+/// Endings of files that a folder stands for; a log with another one is named itself.
+const ENDINGS: [&str; 11] = ["csv", "tsv", "txt", "dat", "asc", "log", "nc", "nc4", "cdf", "gz", "zip"];
+
+/// The logs that the arguments of a call name, in their order: a folder stands for the files in it whose ending is that of a log
+/// ([`ENDINGS`]), sorted by name, without hidden ones and tables that an earlier call wrote (`cruise.csv`); a pattern (`*`, `?`) that the shell has left alone for the files that
 /// match.
 ///
 /// # Errors
@@ -17,7 +20,7 @@ pub(super) fn expand(arguments: &[String]) -> Result<Vec<String>, CallError> {
         if path.is_dir() {
             let files = folder(path).map_err(|e| CallError(format!("{argument}: {e}")))?;
             if files.is_empty() {
-                return Err(CallError(format!("{argument}: there is no file in this folder")));
+                return Err(CallError(format!("{argument}: there is no log in this folder")));
             }
             logs.extend(files);
         } else if !path.exists() && pattern::is_pattern(argument) {
@@ -39,7 +42,9 @@ fn folder(path: &Path) -> std::io::Result<Vec<String>> {
         let entry = entry?;
         let name = entry.file_name();
         let hidden = name.to_string_lossy().starts_with('.');
-        if !hidden && name != super::output::CRUISE && entry.path().is_file() {
+        let ending = entry.path().extension().map(|e| e.to_string_lossy().to_lowercase()).unwrap_or_default();
+        let log = ENDINGS.contains(&ending.as_str());
+        if log && !hidden && name != super::output::CRUISE && entry.path().is_file() {
             files.push(entry.path().display().to_string());
         }
     }
@@ -54,7 +59,7 @@ mod tests {
     #[test]
     fn folders_and_patterns_become_files() {
         let dir = tempfile::tempdir().unwrap();
-        for name in ["b.csv", "a.csv", "c.nc", ".hidden", "cruise.csv"] {
+        for name in ["b.csv", "a.csv", "c.nc", ".hidden", "cruise.csv", "README.md"] {
             std::fs::write(dir.path().join(name), "x").unwrap();
         }
         std::fs::create_dir(dir.path().join("deeper")).unwrap();

@@ -219,11 +219,15 @@ impl Water {
             self.equation_of_state.specific_volume_m3_kg(s, t, level.pressure_dbar) * (1.0 + ppm * 1e-6)
         };
         let mut specific_volume_m3_kg: Vec<f64> = levels.iter().map(volume).collect();
-        if surface_dbar < shift.pressure(self.nodes[0].pressure_dbar) {
-            // The first level is the unsampled top. Specific volume runs linearly down to the next, which is
-            // known: twice the error at the top is the error of the mean.
-            let v = &mut specific_volume_m3_kg[0];
-            *v -= 2.0 * shift.gap_density_kg_m3 * *v * *v;
+        // Above the first observed level nothing is known. The error fades from the surface to that level, which is
+        // known: twice the error of the mean at the top.
+        let first_dbar = shift.pressure(self.nodes[0].pressure_dbar);
+        for (v, level) in specific_volume_m3_kg.iter_mut().zip(&levels) {
+            if level.pressure_dbar >= first_dbar {
+                break;
+            }
+            let share = (first_dbar - level.pressure_dbar) / (first_dbar - surface_dbar);
+            *v -= 2.0 * share * shift.gap_density_kg_m3 * *v * *v;
         }
         Profile::new(levels.iter().map(|l| l.pressure_dbar).collect(), specific_volume_m3_kg)
     }
@@ -240,7 +244,9 @@ impl Water {
         let mut above = level(&self.nodes[0]);
         if surface_dbar < above.pressure_dbar {
             // The unsampled water is as salty and as warm as the first level.
-            levels.push(WaterLevel { pressure_dbar: surface_dbar, ..above });
+            let surface = WaterLevel { pressure_dbar: surface_dbar, ..above };
+            levels.push(surface);
+            bridge(&mut levels, &surface, &above);
         }
         levels.push(above);
         for node in &self.nodes[1..] {

@@ -30,8 +30,8 @@ pub struct Deepest {
     pub raw_sample: usize,
     /// Standard uncertainty of the pressure through noise, in dbar.
     pub u_noise_dbar: f64,
-    /// Whether the noise comes from the data.
-    pub noise_from_data: bool,
+    /// What the running median leaves of the noise of one reading, 0 to 1.
+    pub noise_share: f64,
     /// Standard uncertainty in dbar through picking the largest of many, and through what the sampling missed.
     pub u_peak_dbar: f64,
 }
@@ -70,15 +70,16 @@ impl Deepest {
             p[middle.saturating_sub(3)..(middle + 4).min(p.len())].windows(2).map(|w| (w[1] - w[0]).abs());
         let mut steps: Vec<f64> = around.collect();
         let step = median(&mut steps).unwrap_or(0.0);
-        let missed = if step > 3.0 * deviation { step / 12f64.sqrt() } else { 0.0 };
+        let missed = if window == 1 && step > 3.0 * deviation { step / 12f64.sqrt() } else { 0.0 };
         Some(Self {
             pressure_dbar,
             sample: usable[middle],
             window,
             raw_pressure_dbar: p[raw],
             raw_sample: usable[raw],
-            u_noise_dbar: of_median,
-            noise_from_data: noise.is_some(),
+            // No median takes out what rounding put into every reading alike.
+            u_noise_dbar: of_median.hypot(cast.noise.resolution_dbar / 12f64.sqrt()),
+            noise_share: of_median / deviation,
             u_peak_dbar: picked.hypot(missed),
         })
     }
@@ -149,17 +150,23 @@ fn largest_median(p: &[f64], width: usize) -> Option<(usize, f64)> {
     let mut sorted = p[..width].to_vec();
     sorted.sort_by(f64::total_cmp);
     let mut best = (width / 2, sorted[width / 2]);
+    let mut last = best.0;
     for leaving in 0..p.len() - width {
         let out = sorted.partition_point(|v| v.total_cmp(&p[leaving]).is_lt());
         sorted.remove(out);
         let entering = p[leaving + width];
         let at = sorted.partition_point(|v| v.total_cmp(&entering).is_lt());
         sorted.insert(at, entering);
+        let here = leaving + 1 + width / 2;
         if sorted[width / 2] > best.1 {
-            best = (leaving + 1 + width / 2, sorted[width / 2]);
+            best = (here, sorted[width / 2]);
+            last = here;
+        } else if sorted[width / 2] == best.1 && here == last + 1 {
+            last = here;
         }
     }
-    Some(best)
+    // Where the largest median holds for a while (coarse readings at rest), the middle of that while.
+    Some(((best.0 + last) / 2, best.1))
 }
 
 /// Expected largest of `n` normal values of unit deviation: `Phi^-1((n - 3/8) / (n + 1/4))` (Blom 1958), 0 for one.

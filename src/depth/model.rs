@@ -25,7 +25,8 @@ pub struct Place {
 /// Errors to put on a [`Model`], all zero for none.
 #[derive(Debug, Clone, Copy, PartialEq, Default)]
 pub struct Shift {
-    /// Errors of the observed water. Those of pressure act on the samples too: it is the same sensor.
+    /// Errors of the observed water. Those of pressure act on the samples, and on the levels where the same sensor measured
+    /// them ([`Model::same_sensor`]).
     pub water: WaterShift,
     /// Added to the pressure of the air, in dbar.
     pub surface_dbar: f64,
@@ -50,6 +51,8 @@ pub struct Model {
     pub water: Water,
     /// The place and the day.
     pub place: Place,
+    /// Whether the levels of the water were measured by the sensor of the samples, and share its errors.
+    pub same_sensor: bool,
 }
 
 impl Place {
@@ -102,7 +105,11 @@ impl Model {
     /// [`ProfileError`] when a level of the water is then not that of water.
     pub fn depths_m(&self, at_dbar: &[f64], shift: &Shift) -> Result<Vec<f64>, ProfileError> {
         let place = self.place.shifted(shift);
-        let profile = self.water.profile(place.surface_dbar, &shift.water)?;
+        let mut of_levels = shift.water;
+        if !self.same_sensor {
+            (of_levels.pressure_dbar, of_levels.pressure_relative) = (0.0, 0.0);
+        }
+        let profile = self.water.profile(place.surface_dbar, &of_levels)?;
         let column = Column::integrate(&profile, place.surface_dbar, &place.gravity());
         Ok(at_dbar.iter().map(|&p| place.below_datum_m(column.depth_m(shift.water.pressure(p)))).collect())
     }
@@ -110,6 +117,6 @@ impl Model {
     /// The same model on a coarser set of levels.
     #[must_use]
     pub fn thinned(&self, every: usize) -> Self {
-        Self { water: self.water.thinned(every), place: self.place }
+        Self { water: self.water.thinned(every), ..self.clone() }
     }
 }

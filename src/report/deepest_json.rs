@@ -120,6 +120,6 @@ impl Report for DeepestJson {
     }
 
     fn end(&mut self, out: &mut dyn Write) -> io::Result<()> {
-        out.write_all(b"\n] }\n")
+        write!(out, "\n],\n  \"caution\": {} }}\n", serde_json::Value::from(super::CAUTION))
     }
 }

@@ -106,12 +106,12 @@ fn origin(out: &mut dyn Write, r: &Reduction) -> io::Result<()> {
     let tare = &r.cast.tare;
     let zero = match tare.basis {
         TareBasis::Deck => {
-            let end = |name: &str, x: Option<f64>| x.map(|x| format!("{name} {x:.3}"));
+            let end = |name: &str, x: Option<f64>| x.map(|x| format!("{name} {}", grouped(x, 3)));
             let ends: Vec<String> = [end("before", tare.before_dbar), end("after", tare.after_dbar)]
                 .into_iter()
                 .flatten()
                 .collect();
-            format!("zero offset {:.3} dbar from the deck ({})", tare.value_dbar, ends.join(", "))
+            format!("zero offset {} dbar from the deck ({})", grouped(tare.value_dbar, 3), ends.join(", "))
         }
         TareBasis::Given => format!("zero offset {:.3} dbar as given", tare.value_dbar),
         TareBasis::Assumed => "zero offset 0 dbar, assumed".to_string(),
@@ -119,10 +119,12 @@ fn origin(out: &mut dyn Write, r: &Reduction) -> io::Result<()> {
     line("Sensor", format!("{kind}; {zero}"))?;
     let count = |leg| r.cast.legs.range(leg).len();
     let water = r.cast.legs.water().len();
+    let missing = r.cast.pressure_dbar.iter().filter(|p| !p.is_finite()).count();
+    let without = if missing > 0 { format!("; {missing} without a pressure") } else { String::new() };
     line(
         "Samples",
         format!(
-            "{}: deck {}, down {}, bottom {}, up {}",
+            "{}: deck {}, down {}, bottom {}, up {}{without}",
             r.len(),
             r.len() - water,
             count(Leg::Down),
@@ -205,7 +207,7 @@ fn ladder(out: &mut dyn Write, r: &Reduction) -> io::Result<()> {
 fn orders(out: &mut dyn Write, r: &Reduction) -> io::Result<()> {
     writeln!(
         out,
-        "  IHO S-44 vertical uncertainty: {} m at 95 %",
+        "  Total vertical uncertainty {} m at 95 %, against the maximum allowable of IHO S-44",
         grouped(r.budget.expanded_for_m(0.95), 2)
     )?;
     let verdicts: Vec<String> = r
@@ -213,7 +215,12 @@ fn orders(out: &mut dyn Write, r: &Reduction) -> io::Result<()> {
         .iter()
         .map(|o| {
             let verdict = if o.met { "met" } else { "not met" };
-            format!("{} {verdict} ({} m)", o.order, grouped(o.limit_m, 2))
+            let name = match o.order {
+                "exclusive" => "Exclusive Order".to_string(),
+                "special" => "Special Order".to_string(),
+                number => format!("Order {number}"),
+            };
+            format!("{name} {verdict} ({} m)", grouped(o.limit_m, 2))
         })
         .collect();
     writeln!(out, "{}", wrapped(&verdicts.join("; "), "  "))

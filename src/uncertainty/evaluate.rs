@@ -81,7 +81,7 @@ pub struct Evidence<'a> {
     pub other_leg: Option<&'a Water>,
     /// Whether an error of the air pressure moves the pressures of the log with it.
     pub pressure_follows_air: bool,
-    /// Whether the user gave the air pressure, and likewise the water level (their defaults are tighter then).
+    /// Whether the user gave the air pressure, whose default is tighter then.
     pub air_pressure_given: bool,
     /// Whether the composition of the salt is that of the place.
     pub composition_known: bool,
@@ -165,7 +165,7 @@ impl DepthUncertainty {
             .collect();
         let u_noise = match self.noise_basis {
             Basis::Data | Basis::Assumed => deepest.u_noise_dbar,
-            Basis::Sheet | Basis::Option => self.noise_dbar,
+            Basis::Sheet | Basis::Option => self.noise_dbar * deepest.noise_share,
         };
         terms.push(BudgetTerm::new(Term::PressureNoise, 0.0, u_noise, slope_m_dbar, self.noise_basis));
         let (u_peak, basis) = self
@@ -218,12 +218,7 @@ impl Evaluator<'_> {
             geoid_height_m: u,
             ..Shift::default()
         })?);
-        lines.push(
-            self.plain(Term::Position, place.latitude_deg, |u| Shift {
-                latitude_deg: u,
-                ..Shift::default()
-            })?,
-        );
+        lines.push(self.position()?);
         lines.push(self.plain(Term::WaterLevel, place.water_level_m, |u| Shift {
             water_level_m: u,
             ..Shift::default()
@@ -334,6 +329,25 @@ impl Evaluator<'_> {
         })
     }
 
+    /// Gravity is flat at the equator and the poles, where the central difference vanishes: the larger of both sides counts.
+    fn position(&self) -> Result<Line, ProfileError> {
+        let latitude = self.model.place.latitude_deg;
+        let line = self.plain(Term::Position, latitude, |u| Shift { latitude_deg: u, ..Shift::default() })?;
+        let u = line.u[0];
+        let plain = self.coarse.depths_m(self.levels_dbar, &Shift::default())?;
+        let side = |degrees: f64| -> Result<Vec<f64>, ProfileError> {
+            let shift = Shift { latitude_deg: degrees, ..Shift::default() };
+            let depths = self.coarse.depths_m(self.levels_dbar, &shift)?;
+            Ok(depths.iter().zip(&plain).map(|(moved, z)| moved - z).collect())
+        };
+        let effect_m = side(u)?
+            .into_iter()
+            .zip(side(-u)?)
+            .map(|(north, south)| if north.abs() >= south.abs() { north } else { -south })
+            .collect();
+        Ok(Line { effect_m, ..line })
+    }
+
     /// Value: how far the deepest water is from the reference composition.
     fn composition(&self) -> Result<Line, ProfileError> {
         let otherwise = if self.evidence.composition_known { ATLAS_G_KG } else { REFERENCE_COMPOSITION_G_KG };
@@ -392,7 +406,7 @@ impl Evaluator<'_> {
                 .collect();
             (u, s.basis, Distribution::Normal)
         } else if let (WaterOrigin::Log, Some(other)) = (self.evidence.origin, self.evidence.other_leg) {
-            let other = Model { water: other.clone(), place: self.model.place };
+            let other = Model { water: other.clone(), ..self.model.clone() };
             let theirs = other.depths_m(self.levels_dbar, &Shift::default())?;
             let u = theirs.iter().enumerate().map(|(i, z)| (z - self.depth_m(i)).abs() / 3f64.sqrt());
             (u.collect(), Basis::Data, Distribution::Rectangular)
@@ -425,7 +439,7 @@ impl Evaluator<'_> {
             _ => OTHER_CAST_SHARE,
         };
         let deepest = self.levels_dbar[self.levels_dbar.len() - 1];
-        let standard = Model { water: Water::standard_ocean(deepest), place: self.model.place };
+        let standard = Model { water: Water::standard_ocean(deepest), ..self.model.clone() };
         let theirs = standard.depths_m(self.levels_dbar, &Shift::default())?;
         Ok(theirs.iter().enumerate().map(|(i, z)| share * (z - self.depth_m(i)).abs()).collect())
     }
@@ -442,12 +456,12 @@ impl Evaluator<'_> {
             density_kg_m3(salinity, node.temperature_degc, 0.0)
         };
         let surface_density = at_surface(&nodes[0]);
-        let seen = 0.5 * (at_surface(&below) - surface_density).abs();
+        let seen = 0.5 * (at_surface(&below) - surface_density).abs() / 3f64.sqrt();
         let hidden = GAP.0 * (1.0 - (-gap / GAP.1).exp()) / 12f64.sqrt();
-        let otherwise = seen.max(hidden);
         let (u, basis) = match self.evidence.supplied.get(&Term::SurfaceGap) {
             Some(s) => (s.standard_uncertainty, s.basis),
-            None => (otherwise, Basis::Data),
+            None if seen >= hidden => (seen, Basis::Data),
+            None => (hidden, Basis::Assumed),
         };
         let line = self.line(Term::SurfaceGap, surface_density, u, basis, |u| Shift {
             water: WaterShift { gap_density_kg_m3: u, ..WaterShift::default() },

@@ -14,6 +14,8 @@ const WITHIN: usize = 3;
 const COARSEST_DBAR: f64 = 5.0;
 /// Above this pressure in dbar rivers, rain and bubbles make steps of their own.
 const BELOW_DBAR: f64 = 10.0;
+/// Samples looked at, in times the samples of the leg.
+const PATIENCE: usize = 20;
 /// How much of the step may be left when the salinity has come back.
 const LEFT_SHARE: f64 = 0.35;
 
@@ -36,6 +38,8 @@ pub(super) fn find(salinity: &[f64], pressure: &[f64], flag: &[Flag], leg: Range
     let least = LEAST_STEP.max(TIMES * median(&mut changes).unwrap_or(0.0));
 
     let mut found = Vec::new();
+    // A log of steps that never come back would be searched to its end from each of them.
+    let mut patience = PATIENCE * s.len();
     let mut i = 0;
     while i + WITHIN < s.len() {
         let step = s[i + WITHIN] - s[i];
@@ -48,10 +52,12 @@ pub(super) fn find(salinity: &[f64], pressure: &[f64], flag: &[Flag], leg: Range
             .max_by(|&a, &b| (s[a] - s[a - 1]).abs().total_cmp(&(s[b] - s[b - 1]).abs()))
             .unwrap_or(i + 1);
         let before = s[away - 1];
-        let back = (away + 1..s.len()).find(|&j| {
+        let reach = (away + 1 + patience).min(s.len());
+        let back = (away + 1..reach).find(|&j| {
             let from = j.saturating_sub(WITHIN).max(away);
             (s[j] - before).abs() < LEFT_SHARE * step.abs() && (s[j] - s[from]).abs() > 0.5 * step.abs()
         });
+        patience -= back.unwrap_or(reach) - (away + 1).min(reach);
         match back {
             Some(back) => {
                 found.extend_from_slice(&usable[away..back]);

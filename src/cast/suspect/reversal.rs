@@ -60,7 +60,7 @@ mod tests {
 
     fn reversals(pressure: &[f64]) -> Vec<usize> {
         let legs = crate::cast::legs::find(&Blocks::new(pressure, None), None, pressure.len(), None).unwrap();
-        let noise = Noise { deviation_dbar: None, averaged_step_dbar: None };
+        let noise = Noise { deviation_dbar: None, resolution_dbar: 0.0, averaged_step_dbar: None };
         find(pressure, &vec![Flag::Good; pressure.len()], &legs, &noise)
     }
 

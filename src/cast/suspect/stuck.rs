@@ -24,9 +24,13 @@ const STEPS: f64 = 10.0;
 
 /// Samples of runs of one repeated value during which more pressure went by than rounding explains.
 pub(super) fn find(values: &[f64], pressure: &[f64], range: Range<usize>, limits: &Limits) -> Vec<usize> {
-    let travel = limits.travel_dbar.max(STEPS * resolution(&values[range.clone()]) / limits.change_per_dbar);
+    let rounding = STEPS * resolution(&values[range.clone()]) / limits.change_per_dbar;
+    let samples = range.len();
     runs(values, range)
         .filter(|run| {
+            // One value through most of the cast tells nothing of its last decimal, and is stuck whatever that is.
+            let most = 2 * run.len() > samples;
+            let travel = if most { limits.travel_dbar } else { limits.travel_dbar.max(rounding) };
             let finite = || pressure[run.clone()].iter().copied().filter(|p| p.is_finite());
             let low = finite().fold(f64::INFINITY, f64::min);
             let high = finite().fold(f64::NEG_INFINITY, f64::max);
@@ -85,6 +89,12 @@ mod tests {
         let value = t[700];
         t[700..800].fill(value);
         assert_eq!(find(&t, &p, 0..2000, &TEMPERATURE), (700..800).collect::<Vec<_>>());
+    }
+
+    #[test]
+    fn a_round_value_all_along_is_stuck() {
+        let p: Vec<f64> = (0..900).map(f64::from).collect();
+        assert_eq!(find(&[40.0; 900], &p, 0..900, &CONDUCTIVITY).len(), 900);
     }
 
     #[test]
