@@ -131,7 +131,7 @@ impl Reduction {
         };
         let uncertainty =
             DepthUncertainty::evaluate(&model, &column, deepest_dbar, &evidence).map_err(not_water)?;
-        let slope = column.depth_per_pressure_m_dbar(deepest.pressure_dbar);
+        let (_, slope) = column.depth_and_slope(deepest.pressure_dbar);
         let budget = uncertainty.budget(&deepest, slope, settings.coverage_probability());
         let deepest_m = place.below_datum_m(column.depth_m(deepest.pressure_dbar));
         let ladder = ladder(&model, deepest.pressure_dbar).map_err(not_water)?;
@@ -193,8 +193,9 @@ impl Reduction {
         let pressure_dbar = self.cast.pressure_dbar[i];
         let leg = self.cast.legs.of(i);
         let (depth_m, u_depth_m) = if pressure_dbar.is_finite() {
-            let slope = self.column.depth_per_pressure_m_dbar(pressure_dbar);
-            (self.depth_m(pressure_dbar), self.uncertainty.of_sample_m(pressure_dbar, slope))
+            let (below_surface_m, slope) = self.column.depth_and_slope(pressure_dbar);
+            let u_depth_m = self.uncertainty.of_sample_m(pressure_dbar, slope);
+            (self.model.place.below_datum_m(below_surface_m), u_depth_m)
         } else {
             (f64::NAN, f64::NAN)
         };

@@ -73,14 +73,13 @@ impl Column {
 
     /// Specific volume in m3/kg of the column at sea pressure `pressure_dbar`.
     pub fn specific_volume_m3_kg(&self, pressure_dbar: f64) -> f64 {
-        let i = interval(&self.pressure_dbar, pressure_dbar);
-        let (v, slope) = self.volume_line(i);
-        v + slope * (pressure_dbar - self.pressure_dbar[i])
+        self.point(pressure_dbar).2
     }
 
-    /// Change of depth with pressure in m/dbar, `v / g`.
-    pub fn depth_per_pressure_m_dbar(&self, pressure_dbar: f64) -> f64 {
-        self.specific_volume_m3_kg(pressure_dbar) * PA_PER_DBAR / self.gravity_m_s2(pressure_dbar)
+    /// Depth in m below the sea surface, as [`Column::depth_m`], and its change with pressure in m/dbar, `v / g`.
+    pub fn depth_and_slope(&self, pressure_dbar: f64) -> (f64, f64) {
+        let (depth_m, gravity, volume) = self.point(pressure_dbar);
+        (depth_m, volume * PA_PER_DBAR / gravity)
     }
 
     fn volume_line(&self, i: usize) -> (f64, f64) {
@@ -88,8 +87,8 @@ impl Column {
         (v[i], (v[i + 1] - v[i]) / (p[i + 1] - p[i]))
     }
 
-    /// Depth and gravity at a pressure.
-    fn point(&self, pressure_dbar: f64) -> (f64, f64) {
+    /// Depth, gravity and specific volume at a pressure.
+    fn point(&self, pressure_dbar: f64) -> (f64, f64, f64) {
         let i = interval(&self.pressure_dbar, pressure_dbar);
         let dp = pressure_dbar - self.pressure_dbar[i];
         let (v, slope) = self.volume_line(i);
@@ -98,7 +97,7 @@ impl Column {
         let growth = (self.gravity_m_s2[i + 1] - g) / (self.depth_m[i + 1] - z);
         // dphi = g dz + growth dz^2 / 2, solved in the form that loses no digits when growth is small.
         let root = (g * g + 2.0 * growth * dphi).sqrt();
-        (z + 2.0 * dphi / (g + root), root)
+        (z + 2.0 * dphi / (g + root), root, v + slope * dp)
     }
 }
 
