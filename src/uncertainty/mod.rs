@@ -2,6 +2,7 @@
 
 mod budget;
 mod evaluate;
+mod lines;
 mod order;
 mod term;
 
