@@ -369,6 +369,21 @@ fn further_columns_stand_behind_in_the_order_asked_for() {
 }
 
 #[test]
+fn the_seafloor_lies_an_altitude_below() {
+    let rows: String = (0..300).map(|i| format!("{i},{},10,35,{}\n", i, 320 - i)).collect();
+    let output = Command::cargo_bin("seaplumb")
+        .expect("the program")
+        .args(["reduce", "-", "--lat", "10", "-q", "--with", "seafloor_depth_m"])
+        .write_stdin(format!("time_s,pressure_dbar,temperature_degC,practical_salinity,altitude_m\n{rows}"))
+        .output()
+        .expect("a run");
+    let out = text(&output.stdout);
+    let last: Vec<&str> = out.lines().last().expect("a row").split(',').collect();
+    let number = |i: usize| last[i].parse::<f64>().expect("a number");
+    assert!((number(7) - number(2) - 21.0).abs() < 1e-9, "{last:?}");
+}
+
+#[test]
 fn both_equations_of_state_agree() {
     let depth = |eos: &str| {
         let log = path("lander-dive.csv");

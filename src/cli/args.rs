@@ -180,6 +180,9 @@ pub enum ExtraArg {
     /// Gravity at the sample
     #[value(name = "gravity_m_s2")]
     Gravity,
+    /// Depth of the seafloor: that of the sample and the altitude of the log, as logged
+    #[value(name = "seafloor_depth_m")]
+    SeafloorDepth,
 }
 
 /// Formulas of specific volume.

@@ -112,6 +112,7 @@ pub(super) fn extras(args: &[ExtraArg]) -> Vec<Extra> {
             ExtraArg::SoundSpeed => Extra::SoundSpeed,
             ExtraArg::MeanSoundSpeed => Extra::MeanSoundSpeed,
             ExtraArg::Gravity => Extra::Gravity,
+            ExtraArg::SeafloorDepth => Extra::SeafloorDepth,
         };
         if !columns.contains(&column) {
             columns.push(column);

@@ -19,17 +19,20 @@ pub enum Extra {
     MeanSoundSpeed,
     /// Gravity at the sample in m/s2.
     Gravity,
+    /// Depth of the seafloor in m: that of the sample and the altitude that the log tells, as logged.
+    SeafloorDepth,
 }
 
 impl Extra {
     /// All of them.
-    pub const ALL: [Extra; 6] = [
+    pub const ALL: [Extra; 7] = [
         Extra::PracticalSalinity,
         Extra::AbsoluteSalinity,
         Extra::ConservativeTemperature,
         Extra::SoundSpeed,
         Extra::MeanSoundSpeed,
         Extra::Gravity,
+        Extra::SeafloorDepth,
     ];
 
     /// Name of the column.
@@ -41,6 +44,7 @@ impl Extra {
             Extra::SoundSpeed => "sound_speed_m_s",
             Extra::MeanSoundSpeed => "mean_sound_speed_m_s",
             Extra::Gravity => "gravity_m_s2",
+            Extra::SeafloorDepth => "seafloor_depth_m",
         }
     }
 
@@ -50,6 +54,7 @@ impl Extra {
             Extra::PracticalSalinity | Extra::AbsoluteSalinity | Extra::ConservativeTemperature => 4,
             Extra::SoundSpeed | Extra::MeanSoundSpeed => 2,
             Extra::Gravity => 6,
+            Extra::SeafloorDepth => 3,
         }
     }
 }
@@ -76,6 +81,9 @@ impl<'a> Extras<'a> {
         let p = r.cast.pressure_dbar[i];
         if let Extra::Gravity = column {
             return r.column.gravity_m_s2(p);
+        }
+        if let Extra::SeafloorDepth = column {
+            return r.log.altitude.as_ref().map_or(f64::NAN, |a| r.depth_m(p) + a.values[i]);
         }
         if let Extra::MeanSoundSpeed = column {
             return self.sound.as_ref().map_or(f64::NAN, |s| s.mean_sound_speed_m_s(r.column.depth_m(p)));

@@ -61,6 +61,7 @@ pub(super) fn of_extra(extra: Extra) -> Attributes {
             ("", "travel-time mean of sound speed from the sea surface to the sample", "m s-1")
         }
         Extra::Gravity => ("", "gravity", "m s-2"),
+        Extra::SeafloorDepth => ("", "depth of the seafloor, the altitude as logged added to depth", "m"),
     };
     Attributes::default()
         .with("standard_name", standard_name)
