@@ -77,8 +77,12 @@ impl Deepest {
             window,
             raw_pressure_dbar: p[raw],
             raw_sample: usable[raw],
-            // No median takes out what rounding put into every reading alike.
-            u_noise_dbar: of_median.hypot(cast.noise.resolution_dbar / 12f64.sqrt()),
+            // No median takes out what rounding put into every reading alike. The steps of an averaged log are no
+            // rounding: the peak counts them.
+            u_noise_dbar: match cast.noise.averaged_step_dbar {
+                Some(_) => of_median,
+                None => of_median.hypot(cast.noise.resolution_dbar / 12f64.sqrt()),
+            },
             noise_share: of_median / deviation,
             u_peak_dbar: picked.hypot(missed),
         })
