@@ -7,8 +7,9 @@ use seaplumb::depth::{Model, Place, Shift, ladder, unesco_44_depth_m};
 use seaplumb::gravity::{
     ConstantGravity, Gravity, LinearGravity, LocalGravity, NormalGravity, SurfaceGravity,
 };
-use seaplumb::seawater::{Composition, in_situ_temperature_degc, specific_volume_m3_kg};
+use seaplumb::seawater::{Composition, specific_volume_m3_kg};
 use std::collections::BTreeMap;
+use support::water::{column_of, hadal_salinity, hadal_theta};
 use support::{Residuals, Table};
 
 /// Gravity of the reference library (Saunders 1981; TEOS-10 manual, appendix D.3), which is not ours:
@@ -120,25 +121,7 @@ const HADAL_DBAR: f64 = 11_000.0;
 
 impl Hadal {
     fn new(step_dbar: f64) -> Self {
-        let salinity = |p: f64| {
-            34.69 - 0.35 * (-p / 400.0).exp() + 0.8 * (-((p - 150.0) / 100.0).powi(2)).exp()
-                - 0.25 * (-((p - 450.0) / 250.0).powi(2)).exp()
-        };
-        let theta = |p: f64| 1.03 + 27.0 * (-p / 330.0).exp() + (-p / 1500.0).exp();
-        let level = |i: u32| {
-            let pressure_dbar = f64::from(i) * step_dbar;
-            let salt = salinity(pressure_dbar);
-            let absolute = Composition::Reference.absolute_salinity_g_kg(salt, pressure_dbar);
-            WaterNode {
-                pressure_dbar,
-                temperature_degc: in_situ_temperature_degc(absolute, theta(pressure_dbar), pressure_dbar),
-                salt,
-            }
-        };
-        let count = (HADAL_DBAR / step_dbar).round() as u32;
-        let water =
-            Water::new((0..=count).map(level).collect(), Salt::Practical, Composition::Reference, 0.0)
-                .expect("water");
+        let water = column_of(HADAL_DBAR, step_dbar, hadal_salinity, hadal_theta);
         let place = Place {
             latitude_deg: -23.2,
             surface_dbar: 0.0,

@@ -130,10 +130,8 @@ fn deepest_json_has_the_keys_of_the_interface() {
         "integration",
     ];
     assert_eq!(budget.len(), terms.len());
-    for key in terms {
-        let share = term(key)["share"].as_f64().expect("a share");
-        assert!((0.0..=1.0).contains(&share));
-    }
+    let shares: f64 = terms.iter().map(|key| term(key)["share"].as_f64().expect("a share")).sum();
+    assert!((shares - 1.0).abs() < 1e-5, "the shares make up the whole: {shares}");
     assert_eq!(term("surface_gravity")["basis"], "option");
     assert_eq!(term("surface_gravity")["value"], -182.0);
     assert_eq!(term("water_level")["basis"], "assumed");

@@ -6,6 +6,7 @@ use seaplumb::column::{Column, Salt, SoundColumn, Water, WaterNode, WaterShift};
 use seaplumb::depth::saunders_1981_depth_m;
 use seaplumb::gravity::LocalGravity;
 use seaplumb::seawater::*;
+use support::water::{column_of, hadal_salinity, hadal_theta};
 use support::{Residuals, Table};
 
 /// gsw 3.6.23: Conservative Temperature, and the 75-term polynomial from it and from in-situ temperature.
@@ -74,36 +75,6 @@ fn saunders_returns() {
         (0..table.len()).map(|i| saunders_1981_depth_m(p[i], latitude[i]) - z[i]),
     )
     .within(1e-9, "m");
-}
-
-fn hadal_salinity(p: f64) -> f64 {
-    34.69 - 0.35 * (-p / 400.0).exp() + 0.8 * (-((p - 150.0) / 100.0).powi(2)).exp()
-        - 0.25 * (-((p - 450.0) / 250.0).powi(2)).exp()
-}
-
-fn hadal_theta(p: f64) -> f64 {
-    1.03 + 27.0 * (-p / 330.0).exp() + (-p / 1500.0).exp()
-}
-
-/// A column to `to_dbar` from its Practical Salinity and potential temperature.
-fn column_of(
-    to_dbar: f64,
-    step_dbar: f64,
-    salinity: impl Fn(f64) -> f64,
-    theta: impl Fn(f64) -> f64,
-) -> Water {
-    let level = |i: u32| {
-        let pressure_dbar = f64::from(i) * step_dbar;
-        let salt = salinity(pressure_dbar);
-        let absolute = Composition::Reference.absolute_salinity_g_kg(salt, pressure_dbar);
-        WaterNode {
-            pressure_dbar,
-            temperature_degc: in_situ_temperature_degc(absolute, theta(pressure_dbar), pressure_dbar),
-            salt,
-        }
-    };
-    let count = (to_dbar / step_dbar).round() as u32;
-    Water::new((0..=count).map(level).collect(), Salt::Practical, Composition::Reference, 0.0).expect("water")
 }
 
 /// The check casts of gsw: two of the open ocean to 6 131 dbar and one of a brackish sea to 101 dbar.

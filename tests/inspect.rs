@@ -122,7 +122,8 @@ fn the_dive_is_understood_as_it_was_made() {
     }
     assert_eq!(deck["tare_by"], "deck");
     let u = number(&deck["tare_standard_uncertainty_dbar"]);
-    assert!(u > 0.0 && u < 0.02, "{u}");
+    // Two medians of some 400 readings with 0.03 dbar of noise, and what they differ by: 1.4e-3 and about 1e-3 dbar.
+    assert!(u > 0.0008 && u < 0.003, "{u}");
     assert_eq!(whole(&deck["samples_before"]), whole(&water[0]));
 
     let raw = number(&one(&cast["values"], "quantity", "pressure")["range"][1]);

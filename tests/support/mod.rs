@@ -2,6 +2,7 @@
 #![allow(dead_code)] // each test file uses its own part
 
 pub mod logs;
+pub mod water;
 
 use std::io::Write;
 use std::path::{Path, PathBuf};
